@@ -1,0 +1,9 @@
+namespace ImpedanceScreen.Benchmarks;
+
+/// <summary>All figure commands.</summary>
+internal static class FigureCommands
+{
+    public static IReadOnlyList<IFigureCommand> All { get; } =
+    [
+    ];
+}
