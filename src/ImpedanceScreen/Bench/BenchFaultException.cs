@@ -23,6 +23,9 @@ public enum BenchFault
 
     /// <summary>The order breaks a switching rule (two loads on one output, load without selector).</summary>
     OrderRefused,
+
+    /// <summary>An output holds a voltage though the board's supply is off.</summary>
+    NotDischarged,
 }
 
 /// <summary>The bench did not do as told. The bench is to be made safe, the attempt aborted.</summary>

@@ -1,0 +1,9 @@
+using ImpedanceScreen.Screening.Serials;
+
+namespace ImpedanceScreen.Station.Hosting;
+
+/// <summary>Where serial numbers come from, and what is known of the first boards.</summary>
+/// <param name="Source">The source.</param>
+/// <param name="BoardInNest">Serial number of a board that lies in the nest, where a person has read it.</param>
+/// <param name="FirstLabel">What the simulated boards are labelled from; null where it does not matter.</param>
+internal sealed record SerialChoice(ISerialSource Source, string? BoardInNest, string? FirstLabel);

@@ -1,0 +1,33 @@
+using System.Globalization;
+using Serilog;
+using Serilog.Events;
+using Serilog.Formatting.Compact;
+
+namespace ImpedanceScreen.Station.Hosting;
+
+/// <summary>The log: every event to a rolling file in compact JSON, warnings and worse to standard error.</summary>
+internal static class StationLog
+{
+    private const long FileBytesMax = 64L * 1024 * 1024;
+
+    /// <summary>Path pattern of the log of a store; the date stands before the ending.</summary>
+    public static string PathFor(string storePath, string? folder)
+    {
+        string place = folder ?? Path.GetDirectoryName(Path.GetFullPath(storePath)) ?? ".";
+        return Path.Combine(place, Path.GetFileNameWithoutExtension(storePath) + "-.log");
+    }
+
+    public static Serilog.Core.Logger Make(string path) =>
+        new LoggerConfiguration()
+            .MinimumLevel.Information()
+            .MinimumLevel.Override("Microsoft", LogEventLevel.Warning)
+            .Enrich.FromLogContext()
+            .WriteTo.File(
+                new CompactJsonFormatter(), path, rollingInterval: RollingInterval.Day, fileSizeLimitBytes: FileBytesMax,
+                rollOnFileSizeLimit: true, retainedFileCountLimit: 31)
+            .WriteTo.Console(
+                LogEventLevel.Warning, standardErrorFromLevel: LogEventLevel.Verbose,
+                formatProvider: CultureInfo.InvariantCulture,
+                outputTemplate: "{Level:u4} {Message:lj}{NewLine}")
+            .CreateLogger();
+}

@@ -1,0 +1,88 @@
+using ImpedanceScreen.Decisions;
+using ImpedanceScreen.Jobs;
+using ImpedanceScreen.Limits;
+using ImpedanceScreen.Recording;
+using ImpedanceScreen.Screening.Lots;
+using Spectre.Console;
+
+namespace ImpedanceScreen.Station.Showing;
+
+/// <summary>One board: per output the estimate with its expanded uncertainty, limits, decision and cause.</summary>
+internal sealed class BoardView(ScreeningJob job) : IResultView
+{
+    public Disposition? LastDisposition { get; private set; }
+
+    public void Add(BoardRecord record)
+    {
+        LastDisposition = record.Disposition;
+        AnsiConsole.MarkupLineInterpolated(
+            $"[bold]{record.Product}[/] revision {record.Revision}, serial [bold]{record.Serial}[/], attempt {record.Attempt}");
+        Table table = new Table().Border(TableBorder.Horizontal)
+            .AddColumns("output", "quantity", "value ± U (95 %)", "limits", "guard band", "P(conforms)", "decision");
+        foreach (StateResult state in record.States)
+        {
+            AddRows(table, state);
+        }
+
+        AnsiConsole.Write(table);
+        foreach (StateResult state in record.States.Where(state => state.Fault is not null))
+        {
+            AnsiConsole.MarkupLineInterpolated($"{state.Output} {state.State}: [bold]{state.Fault!.Words}[/]");
+        }
+
+        TimeSpent time = record.TimeSpent;
+        AnsiConsole.MarkupLineInterpolated(
+            $"{record.EndedAt - record.StartedAt:s\\.ff} s: switching {time.SwitchingMs} ms, settling {time.SettlingMs} ms, integrating {time.IntegratingMs} ms, talking {time.TalkingMs} ms, other {time.OtherMs} ms");
+        AnsiConsole.MarkupLineInterpolated($"[bold]{Words(record.Disposition)}[/] {record.Cause}");
+    }
+
+    public void End(LotEnd? end, TimeSpan elapsed)
+    {
+        if (end?.Kind != LotEndKind.Complete)
+        {
+            AnsiConsole.MarkupLineInterpolated($"[bold]{EndWords.Of(end)}[/]");
+        }
+    }
+
+    public void Dispose()
+    {
+    }
+
+    internal static string Words(Disposition disposition) => disposition switch
+    {
+        Disposition.Pass => "PASS",
+        Disposition.Fail => "FAIL",
+        Disposition.Retest => "RETEST",
+        _ => "ABORTED",
+    };
+
+    private static void AddRows(Table table, StateResult state)
+    {
+        string place = $"{state.Output} {state.State}";
+        if (state.Decisions.Count == 0)
+        {
+            table.AddRow(new Text(place), new Text("-"), new Text("no estimate"), new Text(""), new Text(""), new Text(""), Mark(state.Decision));
+            return;
+        }
+
+        foreach (LimitDecision limit in state.Decisions)
+        {
+            table.AddRow(
+                new Text(place),
+                new Text(QuantityText.Name(limit)),
+                new Text(QuantityText.Value(limit)),
+                new Text(QuantityText.Limits(limit)),
+                new Text(limit.GuardFactor == 0 ? "simple" : QuantityText.GuardBand(limit)),
+                new Text(double.IsNaN(limit.ConformityProbability) ? "-" : QuantityText.Probability(limit.ConformityProbability)),
+                Mark(limit.Decision));
+            place = "";
+        }
+    }
+
+    private static Markup Mark(Decision decision) => decision switch
+    {
+        Decision.Pass => new Markup("pass"),
+        Decision.Fail => new Markup("[bold]FAIL[/]"),
+        _ => new Markup("[bold]undecided[/]"),
+    };
+}

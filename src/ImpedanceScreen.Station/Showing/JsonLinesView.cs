@@ -1,0 +1,30 @@
+using ImpedanceScreen.Recording;
+using ImpedanceScreen.Records;
+using ImpedanceScreen.Screening.Lots;
+
+namespace ImpedanceScreen.Station.Showing;
+
+/// <summary>Each record's body as one line of canonical JSON: what is shown is what is sealed.</summary>
+internal sealed class JsonLinesView : IResultView
+{
+    public Disposition? LastDisposition { get; private set; }
+
+    public void Add(BoardRecord record)
+    {
+        LastDisposition = record.Disposition;
+        Console.Out.WriteLine(RecordBody.ToCanonicalJson(record));
+        Console.Out.Flush();
+    }
+
+    public void End(LotEnd? end, TimeSpan elapsed)
+    {
+        if (end is { Words.Length: > 0 })
+        {
+            Console.Error.WriteLine(end.Words);
+        }
+    }
+
+    public void Dispose()
+    {
+    }
+}

@@ -1,0 +1,46 @@
+using System.Globalization;
+using ImpedanceScreen.Screening.Lots;
+using ImpedanceScreen.Station.Commands;
+using ImpedanceScreen.Station.Hosting;
+using Spectre.Console;
+
+namespace ImpedanceScreen.Station.Showing;
+
+/// <summary>The summary at the end of a lot, the same on a terminal and in a file.</summary>
+internal static class LotSummary
+{
+    public static void Write(LotTally tally, RunRequest request, LotEnd? end, TimeSpan elapsed)
+    {
+        AnsiConsole.WriteLine();
+        AnsiConsole.MarkupLineInterpolated($"[bold]lot {request.Lot}[/]: {EndWords.Of(end)}");
+        AnsiConsole.MarkupLineInterpolated(
+            $"{tally.Screened} boards: {tally.Passed} pass, {tally.Failed} fail, {tally.Retest} retest; {tally.Aborted} attempts aborted");
+        if (tally.Screened > 0)
+        {
+            AnsiConsole.MarkupLineInterpolated($"yield {Ratio(100.0 * tally.Passed / tally.Screened, "0.0")} %");
+            AnsiConsole.MarkupLineInterpolated(
+                $"median time a board {Ratio(tally.MedianSeconds, "0.00")} s, {Ratio(tally.MedianOverFloor, "0.000")} times the bench floor of declared waits and integration; {Ratio(elapsed.TotalSeconds, "0.0")} s in all");
+        }
+
+        if (tally.Causes.Any())
+        {
+            Table table = new Table().Border(TableBorder.Horizontal).AddColumns("output", "cause", "boards");
+            table.Columns[2].RightAligned();
+            foreach ((string place, string cause, int boards) in tally.Causes)
+            {
+                table.AddRow(new Text(place), new Text(cause), new Text(boards.ToString(CultureInfo.InvariantCulture)));
+            }
+
+            AnsiConsole.Write(table);
+        }
+
+        AnsiConsole.MarkupLineInterpolated($"records {request.StorePath}");
+        AnsiConsole.MarkupLineInterpolated($"log     {StationLog.PathFor(request.StorePath, request.LogFolder)}");
+        if (end is not null)
+        {
+            AnsiConsole.MarkupLineInterpolated($"head    {end.Head.Sequence}:{end.Head.Link}");
+        }
+    }
+
+    private static string Ratio(double value, string format) => value.ToString(format, CultureInfo.InvariantCulture);
+}
