@@ -10,9 +10,11 @@ internal readonly ref struct GaussNewton
 {
     private readonly FitProblem problem;
     private readonly int size;
+    private readonly int width;
     private readonly int firstLoadTerm;
     private readonly int returnTerm;
     private readonly double floor;
+    private readonly Span<double> weights;
     private readonly Span<double> matrix;
     private readonly Span<double> gradient;
     private readonly Span<double> row;
@@ -28,25 +30,29 @@ internal readonly ref struct GaussNewton
     {
         this.problem = problem;
         size = SizeOf(problem);
+        width = Rows.Padded(size);
         returnTerm = problem.OffsetUncertaintyVolt > 0 ? 1 : 0;
         firstLoadTerm = returnTerm + (problem.ReturnUncertaintyVolt > 0 ? 1 : 0);
         int loads = problem.Loads.Length;
-        matrix = work[..(size * size)];
-        work = work[(size * size)..];
-        gradient = work[..size];
-        row = work.Slice(size, size);
-        values = work.Slice(2 * size, size);
-        steps = work.Slice(3 * size, size);
-        work = work[(4 * size)..];
-        loadErrors = work[..loads];
-        loadSteps = work.Slice(loads, loads);
-        loadPulls = work.Slice(2 * loads, loads);
-        loadDiagonals = work.Slice(3 * loads, loads);
-        loadRows = work.Slice(4 * loads, loads * size);
+        int loadWidth = Rows.Padded(loads);
+        gradient = work[..width];
+        row = work.Slice(width, width);
+        values = work.Slice(2 * width, width);
+        steps = work.Slice(3 * width, width);
+        work = work[(4 * width)..];
+        loadErrors = work[..loadWidth];
+        loadSteps = work.Slice(loadWidth, loadWidth);
+        loadPulls = work.Slice(2 * loadWidth, loadWidth);
+        loadDiagonals = work.Slice(3 * loadWidth, loadWidth);
+        work = work[(4 * loadWidth)..];
+        matrix = work[..(size * width)];
+        loadRows = work.Slice(size * width, loads * width);
+        weights = work.Slice((size + loads) * width, problem.Points.Length);
         double sum = 0;
-        foreach (ref readonly FitPoint point in problem.Points)
+        for (int i = 0; i < weights.Length; i++)
         {
-            double ratio = point.Volt / point.StandardUncertaintyVolt;
+            weights[i] = 1 / problem.Points[i].StandardUncertaintyVolt;
+            double ratio = problem.Points[i].Volt * weights[i];
             sum += ratio * ratio;
         }
 
@@ -57,7 +63,8 @@ internal readonly ref struct GaussNewton
     public static int WorkLength(in FitProblem problem)
     {
         int unknowns = SizeOf(problem);
-        return (unknowns + problem.Loads.Length) * (unknowns + 4);
+        int loads = problem.Loads.Length;
+        return (Rows.Padded(unknowns) * (4 + unknowns + loads)) + (4 * Rows.Padded(loads)) + problem.Points.Length;
     }
 
     /// <summary>Square of a step, in uncertainties, that is nothing but rounding.</summary>
@@ -67,6 +74,14 @@ internal readonly ref struct GaussNewton
 
     public double Ohm => values[size - 1];
 
+    /// <summary>Starts from the line of the readings against load current.</summary>
+    public void Start()
+    {
+        (double sourceVolt, double ohm) = StartLine.Fit(problem, weights);
+        Start(sourceVolt, ohm);
+    }
+
+    /// <summary>Starts from given values, all loads and common terms as stated.</summary>
     public void Start(double sourceVolt, double ohm)
     {
         values.Clear();
@@ -87,14 +102,17 @@ internal readonly ref struct GaussNewton
         double objective = 0;
         for (int k = 0; k < size - 2; k++)
         {
-            matrix[k * (size + 1)] = 1;
+            matrix[k * (width + 1)] = 1;
             gradient[k] = -values[k];
             objective += values[k] * values[k];
         }
 
         int load = -1;
-        foreach (ref readonly FitPoint point in problem.Points)
+        double offset = returnTerm == 1 ? problem.OffsetUncertaintyVolt * values[0] : 0;
+        double back = Return(offset);
+        for (int i = 0; i < weights.Length; i++)
         {
+            ref readonly FitPoint point = ref problem.Points[i];
             if (point.Load != load)
             {
                 load = point.Load;
@@ -103,14 +121,13 @@ internal readonly ref struct GaussNewton
                 BeginLoad(load, prior);
             }
 
-            SourceModel model = ModelAt(load);
+            var model = new SourceModel(SourceVolt, Ohm, back, LoadSiemens(load), problem.MeterSiemens);
             if (!model.IsPhysical)
             {
                 return double.PositiveInfinity;
             }
 
-            double weight = 1 / point.StandardUncertaintyVolt;
-            double offset = returnTerm == 1 ? problem.OffsetUncertaintyVolt * values[0] : 0;
+            double weight = weights[i];
             double residual = (point.Volt - model.Volt - offset) * weight;
             objective += residual * residual;
             FillRow(model, load, weight);
@@ -119,7 +136,8 @@ internal readonly ref struct GaussNewton
                 Rotate(load, model.PerLoadOhm * problem.Loads[load].IndividualOhm * weight, ref residual);
             }
 
-            Accumulate(residual);
+            Rows.AddSquare(matrix, row, size);
+            Rows.AddScaled(gradient, row, residual);
         }
 
         return objective;
@@ -131,24 +149,24 @@ internal readonly ref struct GaussNewton
     public bool Step(out double decrement)
     {
         decrement = 0;
-        if (!SmallCholesky.Factor(matrix, size))
+        if (!SmallCholesky.Factor(matrix, size, width))
         {
             return false;
         }
 
-        SmallCholesky.SolveLower(matrix, size, gradient);
+        SmallCholesky.SolveLower(matrix, size, width, gradient);
         foreach (double part in gradient)
         {
             decrement += part * part;
         }
 
-        SmallCholesky.SolveUpper(matrix, size, gradient);
+        SmallCholesky.SolveUpper(matrix, size, width, gradient);
         gradient.CopyTo(steps);
-        for (int load = 0; load < loadSteps.Length; load++)
+        for (int load = 0; load < problem.Loads.Length; load++)
         {
             double step = loadPulls[load];
             decrement += step * step;
-            ReadOnlySpan<double> coupling = loadRows.Slice(load * size, size);
+            ReadOnlySpan<double> coupling = loadRows.Slice(load * width, width);
             for (int k = 0; k < size; k++)
             {
                 step -= coupling[k] * steps[k];
@@ -157,26 +175,26 @@ internal readonly ref struct GaussNewton
             loadSteps[load] = step / loadDiagonals[load];
         }
 
-        AddScaled(values, steps, 1);
-        AddScaled(loadErrors, loadSteps, 1);
+        Rows.AddScaled(values, steps, 1);
+        Rows.AddScaled(loadErrors, loadSteps, 1);
         return double.IsFinite(decrement);
     }
 
     /// <summary>Takes half of the last step back.</summary>
     public void HalveStep()
     {
-        AddScaled(values, steps, -0.5);
-        AddScaled(steps, steps, -0.5);
-        AddScaled(loadErrors, loadSteps, -0.5);
-        AddScaled(loadSteps, loadSteps, -0.5);
+        Rows.AddScaled(values, steps, -0.5);
+        Rows.AddScaled(steps, steps, -0.5);
+        Rows.AddScaled(loadErrors, loadSteps, -0.5);
+        Rows.AddScaled(loadSteps, loadSteps, -0.5);
     }
 
     /// <summary>Variances and covariance of Vth and resistance, from the factor's last corner.</summary>
     public (double Volt, double Ohm, double Both) Covariance()
     {
-        int last = (size * size) - 1;
+        int last = ((size - 1) * width) + size - 1;
         double lower = matrix[last];
-        double upper = matrix[last - size - 1];
+        double upper = matrix[last - width - 1];
         double corner = matrix[last - 1];
         double ratio = corner / (upper * lower);
         return ((1 / (upper * upper)) + (ratio * ratio), 1 / (lower * lower), -ratio / lower);
@@ -185,33 +203,30 @@ internal readonly ref struct GaussNewton
     private static int SizeOf(in FitProblem problem) =>
         2 + problem.CommonCount + (problem.OffsetUncertaintyVolt > 0 ? 1 : 0) + (problem.ReturnUncertaintyVolt > 0 ? 1 : 0);
 
-    private SourceModel ModelAt(int load)
+    private double Return(double offset)
     {
-        double back = problem.ReturnVolt;
-        if (problem.ReturnSharesOffset && returnTerm == 1)
+        double shared = problem.ReturnSharesOffset ? offset : 0;
+        double own = firstLoadTerm > returnTerm ? problem.ReturnUncertaintyVolt * values[returnTerm] : 0;
+        return problem.ReturnVolt - shared + own;
+    }
+
+    private double LoadSiemens(int load)
+    {
+        if (load < 0)
         {
-            back -= problem.OffsetUncertaintyVolt * values[0];
+            return 0;
         }
 
-        if (firstLoadTerm > returnTerm)
+        ref readonly FitLoad stated = ref problem.Loads[load];
+        double ohm = stated.Ohm + (stated.IndividualOhm * loadErrors[load]);
+        int count = problem.CommonCount;
+        ReadOnlySpan<double> common = problem.CommonOhm.Slice(load * count, count);
+        for (int k = 0; k < common.Length; k++)
         {
-            back += problem.ReturnUncertaintyVolt * values[returnTerm];
+            ohm += common[k] * values[firstLoadTerm + k];
         }
 
-        double siemens = 0;
-        if (load >= 0)
-        {
-            FitLoad stated = problem.Loads[load];
-            double ohm = stated.Ohm + (stated.IndividualOhm * loadErrors[load]);
-            for (int k = 0; k < problem.CommonCount; k++)
-            {
-                ohm += problem.CommonOhm[(load * problem.CommonCount) + k] * values[firstLoadTerm + k];
-            }
-
-            siemens = 1 / ohm;
-        }
-
-        return new(values[size - 2], values[size - 1], back, siemens, problem.MeterSiemens);
+        return 1 / ohm;
     }
 
     private void FillRow(in SourceModel model, int load, double weight)
@@ -237,19 +252,9 @@ internal readonly ref struct GaussNewton
         row[size - 1] = model.PerOhm * weight;
     }
 
-    private void Accumulate(double residual)
-    {
-        for (int i = 0; i < size; i++)
-        {
-            double factor = row[i];
-            gradient[i] += factor * residual;
-            AddScaled(matrix.Slice(i * size, i + 1), row, factor);
-        }
-    }
-
     private void BeginLoad(int load, double prior)
     {
-        loadRows.Slice(load * size, size).Clear();
+        loadRows.Slice(load * width, width).Clear();
         loadDiagonals[load] = 1;
         loadPulls[load] = prior;
     }
@@ -260,27 +265,14 @@ internal readonly ref struct GaussNewton
     {
         double diagonal = loadDiagonals[load];
         double length = Math.Sqrt((diagonal * diagonal) + (own * own));
-        double cosine = diagonal / length;
-        double sine = own / length;
-        Span<double> kept = loadRows.Slice(load * size, size);
-        for (int k = 0; k < size; k++)
-        {
-            double above = kept[k];
-            kept[k] = (cosine * above) + (sine * row[k]);
-            row[k] = (cosine * row[k]) - (sine * above);
-        }
-
+        double inverse = 1 / length;
+        double cosine = diagonal * inverse;
+        double sine = own * inverse;
+        Span<double> kept = loadRows.Slice(load * width, width);
+        Rows.Rotate(kept, row, cosine, sine);
         double pull = loadPulls[load];
         loadPulls[load] = (cosine * pull) + (sine * residual);
         residual = (cosine * residual) - (sine * pull);
         loadDiagonals[load] = length;
-    }
-
-    private static void AddScaled(Span<double> target, ReadOnlySpan<double> source, double factor)
-    {
-        for (int i = 0; i < target.Length; i++)
-        {
-            target[i] += factor * source[i];
-        }
     }
 }

@@ -15,8 +15,9 @@ public static class SourceFitter
     public static SourceFit Fit(in FitProblem problem)
     {
         Check(problem);
-        (double sourceVolt, double ohm) = StartLine.Fit(problem);
-        return Minimise(problem, sourceVolt, ohm);
+        var search = new GaussNewton(problem, stackalloc double[GaussNewton.WorkLength(problem)]);
+        search.Start();
+        return Minimise(problem, search);
     }
 
     /// <summary>Fits from a given start.</summary>
@@ -27,7 +28,9 @@ public static class SourceFitter
     public static SourceFit Fit(in FitProblem problem, double sourceVolt, double ohm)
     {
         Check(problem);
-        return Minimise(problem, sourceVolt, ohm);
+        var search = new GaussNewton(problem, stackalloc double[GaussNewton.WorkLength(problem)]);
+        search.Start(sourceVolt, ohm);
+        return Minimise(problem, search);
     }
 
     /// <summary>
@@ -55,11 +58,8 @@ public static class SourceFitter
         }
     }
 
-    private static SourceFit Minimise(in FitProblem problem, double sourceVolt, double ohm)
+    private static SourceFit Minimise(in FitProblem problem, in GaussNewton search)
     {
-        Span<double> work = stackalloc double[GaussNewton.WorkLength(problem)];
-        var search = new GaussNewton(problem, work);
-        search.Start(sourceVolt, ohm);
         double best = double.PositiveInfinity;
         double before = double.NaN;
         for (int iteration = 1; iteration <= IterationLimit; iteration++)

@@ -6,38 +6,36 @@ namespace ImpedanceScreen.Estimation;
 /// </summary>
 internal static class StartLine
 {
-    public static (double SourceVolt, double Ohm) Fit(in FitProblem problem)
+    /// <summary>Vth and resistance of the line.</summary>
+    /// <param name="problem">The problem.</param>
+    /// <param name="weights">For each point 1/u, 1/V.</param>
+    public static (double SourceVolt, double Ohm) Fit(in FitProblem problem, ReadOnlySpan<double> weights)
     {
-        double weights = 0;
-        double currents = 0;
-        double volts = 0;
-        foreach (ref readonly FitPoint point in problem.Points)
+        // Sums about the first reading and current: those of a good source are close together.
+        double volt = problem.Points[0].Volt;
+        double current = Current(problem, problem.Points[0]);
+        double count = 0;
+        double x = 0;
+        double y = 0;
+        double xx = 0;
+        double xy = 0;
+        for (int i = 0; i < weights.Length; i++)
         {
-            double weight = Weight(point);
-            weights += weight;
-            currents += weight * Current(problem, point);
-            volts += weight * point.Volt;
-        }
-
-        double meanCurrent = currents / weights;
-        double meanVolt = volts / weights;
-        double square = 0;
-        double product = 0;
-        foreach (ref readonly FitPoint point in problem.Points)
-        {
-            double weight = Weight(point);
-            double current = Current(problem, point) - meanCurrent;
-            square += weight * current * current;
-            product += weight * current * (point.Volt - meanVolt);
+            double weight = weights[i] * weights[i];
+            double along = Current(problem, problem.Points[i]) - current;
+            double up = problem.Points[i].Volt - volt;
+            count += weight;
+            x += weight * along;
+            y += weight * up;
+            xx += weight * along * along;
+            xy += weight * along * up;
         }
 
         // Without any current there is no resistance to see; the equations will say so.
-        double ohm = square > 0 ? -product / square : 0;
-        return (meanVolt + (ohm * meanCurrent), ohm);
+        double square = (count * xx) - (x * x);
+        double ohm = square > 0 ? ((x * y) - (count * xy)) / square : 0;
+        return (volt + (y / count) + (ohm * (current + (x / count))), ohm);
     }
-
-    private static double Weight(in FitPoint point) =>
-        1 / (point.StandardUncertaintyVolt * point.StandardUncertaintyVolt);
 
     private static double Current(in FitProblem problem, in FitPoint point)
     {
