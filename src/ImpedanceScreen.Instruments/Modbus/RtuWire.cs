@@ -11,8 +11,6 @@ namespace ImpedanceScreen.Instruments.Modbus;
 /// </summary>
 internal sealed class RtuWire : IModbusWire
 {
-    // An adapter hands bytes over in bursts; a pause this long means that nothing more is under way.
-    private static readonly TimeSpan BurstGap = TimeSpan.FromMilliseconds(20);
     private const int TimeoutsBeforeReopening = 2;
 
     private readonly byte[] outgoing = new byte[ModbusLimits.RtuFrameLength];
@@ -49,7 +47,8 @@ internal sealed class RtuWire : IModbusWire
         if (doubtful)
         {
             await silentUntil.WaitAsync(cancellation);
-            await DrainAsync(cancellation);
+            await QuietLine.DrainAsync(channel, time, cancellation);
+            NoteLineBusyFor(TimeSpan.Zero);
             doubtful = false;
         }
 
@@ -161,23 +160,5 @@ internal sealed class RtuWire : IModbusWire
         }
 
         return received;
-    }
-
-    private async ValueTask DrainAsync(CancellationToken cancellation)
-    {
-        channel!.DiscardReceived();
-        for (int drained = 0; drained < ModbusLimits.RtuFrameLength;)
-        {
-            using var quiet = new TimeLimit(time, BurstGap + silentInterval, cancellation);
-            try
-            {
-                drained += await channel.ReadAsync(incoming, quiet.Token);
-                NoteLineBusyFor(TimeSpan.Zero);
-            }
-            catch (OperationCanceledException) when (quiet.Expired)
-            {
-                return;
-            }
-        }
     }
 }

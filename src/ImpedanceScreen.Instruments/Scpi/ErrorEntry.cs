@@ -7,7 +7,9 @@ namespace ImpedanceScreen.Instruments.Scpi;
 /// <param name="Text">Its text as sent, without quotation marks.</param>
 public sealed record ErrorEntry(int Number, string Text)
 {
-    /// <summary>Reads the answer to <c>SYSTem:ERRor?</c>. Only the number before the comma says whether it is an error.</summary>
+    /// <summary>
+    /// Reads the answer to <c>SYSTem:ERRor?</c>. Only the number before the comma says whether it is an error.
+    /// </summary>
     /// <exception cref="ScpiException">It is no such answer.</exception>
     public static ErrorEntry Parse(string answer)
     {

@@ -5,7 +5,8 @@ using ImpedanceScreen.Bench;
 namespace ImpedanceScreen.Instruments.Scpi;
 
 /// <summary>
-/// A numeric answer: NR1, NR2 or NR3 (IEEE 488.2-1992 8.7.2 to 8.7.4), where ±9.9E37 stands for infinity and 9.91E37 for not a number
+/// A numeric answer: NR1, NR2 or NR3 (IEEE 488.2-1992 8.7.2 to 8.7.4), where ±9.9E37 stands for infinity and 9.91E37
+/// for not a number
 /// (SCPI-1999 Volume 1, 7.2.1.4 and 7.2.1.5).
 /// </summary>
 /// <param name="Condition">Whether it is a number at all.</param>

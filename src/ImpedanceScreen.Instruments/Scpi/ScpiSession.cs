@@ -7,20 +7,21 @@ using Microsoft.Extensions.Logging;
 namespace ImpedanceScreen.Instruments.Scpi;
 
 /// <summary>
-/// Lines to and from one instrument: LF is sent and expected, CR is stripped, a line is bounded, one query is outstanding. A raw
-/// socket or a serial line has no device clear, so after a failure the session is dirty: <see cref="CleanAsync"/> reopens a socket and
+/// Lines to and from one instrument: LF is sent and expected, CR is stripped, a line is bounded, one query is
+/// outstanding. A raw
+/// socket or a serial line has no device clear, so after a failure the session is dirty: <see cref="CleanAsync"/>
+/// reopens a socket and
 /// drains a serial line.
 /// </summary>
 /// <remarks>One caller at a time.</remarks>
 public sealed class ScpiSession : IAsyncDisposable
 {
-    /// <summary>Longest line, bytes: the longest answer in use, an error text, has 255 (SCPI-1999 Volume 2, 21.8).</summary>
+    /// <summary>
+    /// Longest line, bytes: the longest answer in use, an error text, has 255 (SCPI-1999 Volume 2, 21.8).
+    /// </summary>
     public const int LineLength = 512;
 
     private const byte LineFeed = (byte)'\n';
-
-    // A serial adapter hands bytes over in bursts; a pause this long means that nothing more is under way.
-    private static readonly TimeSpan BurstGap = TimeSpan.FromMilliseconds(20);
 
     private readonly byte[] outgoing = new byte[LineLength];
     private readonly byte[] incoming = new byte[LineLength];
@@ -28,7 +29,7 @@ public sealed class ScpiSession : IAsyncDisposable
     private readonly TimeProvider time;
     private readonly LiveLink live;
     private IByteChannel? channel;
-    private Deadline answerUntil;
+    private Deadline? outstanding;
 
     /// <summary>Makes a session; the link is opened by <see cref="CleanAsync"/>.</summary>
     public ScpiSession(Link link, IChannelFactory channels, TimeProvider time, ILogger log)
@@ -40,7 +41,8 @@ public sealed class ScpiSession : IAsyncDisposable
     }
 
     /// <summary>
-    /// Whether the next answer would belong to the next query. False at the beginning and after any failure: the instrument is then
+    /// Whether the next answer would belong to the next query. False at the beginning and after any failure: the
+    /// instrument is then
     /// to be asked who it is, and set up again.
     /// </summary>
     public bool IsClean { get; private set; }
@@ -110,6 +112,7 @@ public sealed class ScpiSession : IAsyncDisposable
         return GuardAsync(
             async token =>
             {
+                channel.DiscardReceived();
                 await channel.WriteAsync(outgoing.AsMemory(0, length), token);
                 return hasAnswer ? await ReceiveLineAsync(token) : string.Empty;
             },
@@ -122,12 +125,13 @@ public sealed class ScpiSession : IAsyncDisposable
         Func<CancellationToken, Task<string>> exchange, TimeSpan duration, CancellationToken cancellation)
     {
         IsClean = false;
-        answerUntil = Deadline.In(time, link.Timeout + duration);
+        outstanding = Deadline.In(time, link.Timeout + duration);
         using var limit = new TimeLimit(time, link.Timeout + duration, cancellation);
         try
         {
             string answer = await exchange(limit.Token);
             IsClean = true;
+            outstanding = null;
             live.Proved();
             return answer;
         }
@@ -152,7 +156,8 @@ public sealed class ScpiSession : IAsyncDisposable
             received += count;
             if (end >= 0)
             {
-                // One query is outstanding, so nothing follows its answer; what does is dropped with the next doubt.
+                // One query is outstanding, so nothing is due behind its answer; what there is must not answer the
+                // next.
                 int length = received - count + end;
                 return Encoding.Latin1.GetString(incoming, 0, length).TrimEnd('\r');
             }
@@ -164,22 +169,20 @@ public sealed class ScpiSession : IAsyncDisposable
     // The answer that is outstanding comes, or its time passes; then the line is read until it is quiet.
     private async Task DrainAsync(CancellationToken cancellation)
     {
-        channel!.DiscardReceived();
-        TimeSpan wait = answerUntil == default ? TimeSpan.Zero : answerUntil.Remaining;
-        for (int drained = 0; drained < 8 * LineLength;)
+        if (outstanding is { Passed: false } due)
         {
-            using var quiet = new TimeLimit(time, wait > BurstGap ? wait : BurstGap, cancellation);
+            using var limit = new TimeLimit(time, due.Remaining, cancellation);
             try
             {
-                int count = await channel.ReadAsync(incoming, quiet.Token);
-                wait = incoming.AsSpan(0, count).Contains(LineFeed) ? TimeSpan.Zero : wait;
-                drained += count;
+                await ReceiveLineAsync(limit.Token);
             }
-            catch (OperationCanceledException) when (quiet.Expired)
+            catch (Exception e) when (e is ScpiException || (e is OperationCanceledException && limit.Expired))
             {
-                answerUntil = default;
-                return;
+                // Either way the answer that was due is no longer to be expected.
             }
         }
+
+        outstanding = null;
+        await QuietLine.DrainAsync(channel!, time, cancellation);
     }
 }
