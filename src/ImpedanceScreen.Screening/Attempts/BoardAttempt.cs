@@ -3,6 +3,7 @@ using ImpedanceScreen.Estimation;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Planning;
+using ImpedanceScreen.Quantities;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Status;
 using ImpedanceScreen.Screening.Watching;
@@ -75,7 +76,7 @@ public sealed class BoardAttempt
                 settings.Time, on.AcknowledgedTimestamp, (on.ContactTime + supply.WarmUp) * settings.TimeScale);
         }
 
-        foreach (IReadOnlyList<Lane> wave in Schedule.Waves(order.Job.States))
+        foreach (IReadOnlyList<Lane> wave in Schedule.Waves(order.Job))
         {
             await RunWaveAsync(wave, cancellation);
         }
@@ -179,7 +180,12 @@ public sealed class BoardAttempt
 
     private void Judge(Lane lane) =>
         results.Add(StateEvaluation.Evaluate(
-            lane.State!, lane.Taken, temperatureDegC, order.Job.States.Count, order.StartedAt));
+            lane.State!, lane.Taken, Temperature, DiagnosticAlarm.TestsOf(order.Job), order.StartedAt));
+
+    private Uncertain? Temperature =>
+        temperatureDegC is { } measured && order.Job.Fixture.TemperatureSensor is { } sensor
+            ? new Uncertain(measured, sensor.StandardUncertaintyDegC)
+            : null;
 
     private async Task DischargeAsync(BoardSupply supply, CancellationToken cancellation)
     {

@@ -19,7 +19,7 @@ internal static class BoardDisposition
             return (Disposition.Aborted, allOpen.Confirmed ? why : Join(why, $"relays not proved open: {allOpen.Alarm}"));
         }
 
-        Decision board = BoardDecision.Of([.. results.Select(result => result.Decision)]);
+        Decision board = LimitJudge.Combine(results.Select(result => result.Decision));
         string causes = string.Join("; ", results.Where(result => result.Decision != Decision.Pass).Select(Cause));
         return board switch
         {

@@ -9,7 +9,7 @@ namespace ImpedanceScreen.Screening.Attempts;
 /// The drive states of the outputs that share a load bank or a group, one after another: no two of them are ever
 /// loaded at once. Lanes are loaded beside one another.
 /// </summary>
-internal sealed class Lane(IEnumerable<StateJob> states)
+internal sealed class Lane(IEnumerable<StateJob> states, int testsPerBoard)
 {
     private readonly Queue<StateJob> waiting = new(states);
     private List<LoadPointReadings> taken = [];
@@ -54,5 +54,5 @@ internal sealed class Lane(IEnumerable<StateJob> states)
     /// <summary>The readings of <see cref="State"/> so far.</summary>
     public IReadOnlyList<LoadPointReadings> Taken => taken;
 
-    private void Ask() => Wanted = State is null ? null : Planner.Next(State, taken) as PlanStep.Measure;
+    private void Ask() => Wanted = State is null ? null : FixedPlan.Next(State, taken, testsPerBoard) as PlanStep.Measure;
 }

@@ -18,6 +18,9 @@ internal sealed class LoadPointRunner(
     private readonly Dictionary<string, Relay> sensed = [];
     private readonly HashSet<Relay> loadRelays = [.. fixture.LoadBanks.SelectMany(bank => bank.Loads, (_, load) => load.Relay)];
 
+    // Where the far ends of the loads go: the same for all lanes of a wave, so that no lane opens it for another.
+    private Relay? loadReturn;
+
     /// <summary>No reading is valid before this moment: the board warms up.</summary>
     public Deadline WarmedUp { get; set; } = Deadline.In(time, TimeSpan.Zero);
 
@@ -31,20 +34,24 @@ internal sealed class LoadPointRunner(
             path.Add(stimulus.Relay);
         }
 
-        if ((state.LoadReturn?.Relay ?? fixture.CommonReturn) is { } loadReturn)
-        {
-            path.Add(loadReturn);
-        }
-
         List<Relay> open = [.. lane.Path.Except(path)];
+        List<Relay> close = [.. path.Except(lane.Path)];
         if (lane.Closed is { } closed)
         {
             open.Add(closed.Relay);
         }
 
-        await SwitchAsync(lane, open, [.. path.Except(lane.Path)], cancellation);
+        Relay? wanted = state.LoadReturn?.Relay ?? fixture.CommonReturn;
+        if (wanted != loadReturn)
+        {
+            AddIfAny(open, loadReturn);
+            AddIfAny(close, wanted);
+        }
+
+        await SwitchAsync(lane, open, close, cancellation);
         lane.Path = path;
         lane.Closed = null;
+        loadReturn = wanted;
     }
 
     /// <summary>Opens what a lane holds.</summary>
@@ -165,6 +172,14 @@ internal sealed class LoadPointRunner(
             BenchFault.ContactContradicted,
             $"contact of unit {relay.Unit} coil {relay.Coil} reads {reads} though its coil is {coil}: "
             + $"relay {suspicion} or its readback broken");
+
+    private static void AddIfAny(List<Relay> relays, Relay? relay)
+    {
+        if (relay is not null)
+        {
+            relays.Add(relay);
+        }
+    }
 
     private static Deadline Later(Deadline one, Deadline other) => one.Remaining > other.Remaining ? one : other;
 }

@@ -1,3 +1,4 @@
+using ImpedanceScreen.Estimation;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
 
@@ -10,10 +11,10 @@ internal static class Schedule
     /// Waves, one after another. States of one wave share the load return; each of its lanes holds what shares a load
     /// bank or a group, since outputs loaded at once would otherwise shift one another through common return and supply.
     /// </summary>
-    public static IEnumerable<IReadOnlyList<Lane>> Waves(IReadOnlyList<StateJob> states) =>
-        states.GroupBy(state => state.LoadReturn?.Name).Select(Lanes);
+    public static IEnumerable<IReadOnlyList<Lane>> Waves(ScreeningJob job) =>
+        job.States.GroupBy(state => state.LoadReturn?.Name).Select(wave => Lanes(wave, DiagnosticAlarm.TestsOf(job)));
 
-    private static List<Lane> Lanes(IEnumerable<StateJob> states)
+    private static List<Lane> Lanes(IEnumerable<StateJob> states, int testsPerBoard)
     {
         List<List<StateJob>> lanes = [];
         foreach (StateJob state in states)
@@ -24,7 +25,7 @@ internal static class Schedule
             lanes.Add(merged);
         }
 
-        return lanes.ConvertAll(lane => new Lane(lane));
+        return lanes.ConvertAll(lane => new Lane(lane, testsPerBoard));
     }
 
     private static bool Share(FixtureOutput one, FixtureOutput other) =>

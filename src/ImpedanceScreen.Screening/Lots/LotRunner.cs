@@ -1,8 +1,9 @@
+using System.Text.RegularExpressions;
 using ImpedanceScreen.Bench;
+using ImpedanceScreen.Limits;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Attempts;
 using ImpedanceScreen.Screening.Handshakes;
-using ImpedanceScreen.Screening.Serials;
 using ImpedanceScreen.Screening.Status;
 using Microsoft.Extensions.Logging;
 
@@ -23,6 +24,7 @@ public sealed class LotRunner
     private readonly RunSettings run;
     private readonly ILogger log;
     private readonly HandlerDialogue handler;
+    private readonly Regex serialPattern;
     private readonly List<Guid> superseded = [];
     private BenchSettings settings;
     private int faultsInARow;
@@ -40,6 +42,7 @@ public sealed class LotRunner
         this.order = order;
         this.run = run;
         this.log = log;
+        serialPattern = SerialNumber.Compile(order.Job.Limits.SerialPattern);
         handler = new HandlerDialogue(bench, order.Job.Fixture, run.Time);
         settings = new BenchSettings(
             store.Station, run.ProgramVersion, new Dictionary<string, string>(), run.TimeScale, run.Time);
@@ -171,7 +174,7 @@ public sealed class LotRunner
         status.Publish(Activity.AwaitingSerial, "waiting for a serial number");
         while (await order.Serials.NextAsync(cancellation) is { } serial)
         {
-            if (!SerialPatterns.Matches(order.Job.Limits.SerialPattern, serial))
+            if (!serialPattern.IsMatch(serial))
             {
                 log.LogWarning(
                     "{Serial} is no serial number of {Product} (pattern {Pattern}): scan it again",

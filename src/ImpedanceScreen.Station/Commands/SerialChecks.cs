@@ -1,5 +1,5 @@
+using System.Text.RegularExpressions;
 using ImpedanceScreen.Limits;
-using ImpedanceScreen.Screening.Serials;
 
 namespace ImpedanceScreen.Station.Commands;
 
@@ -8,7 +8,8 @@ internal static class SerialChecks
 {
     public static void Refuse(LimitFile limits, IReadOnlyList<string> serials)
     {
-        if (serials.FirstOrDefault(serial => !SerialPatterns.Matches(limits.SerialPattern, serial)) is { } bad)
+        Regex pattern = SerialNumber.Compile(limits.SerialPattern);
+        if (serials.FirstOrDefault(serial => !pattern.IsMatch(serial)) is { } bad)
         {
             throw new NotBegunException(
                 $"'{bad}' is no serial number of {limits.Product}: its limit file asks for {limits.SerialPattern}");

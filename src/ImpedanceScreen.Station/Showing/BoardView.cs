@@ -72,8 +72,8 @@ internal sealed class BoardView(ScreeningJob job) : IResultView
                 new Text(QuantityText.Name(limit)),
                 new Text(QuantityText.Value(limit)),
                 new Text(QuantityText.Limits(limit)),
-                new Text(limit.GuardFactor == 0 ? "simple" : QuantityText.GuardBand(limit)),
-                new Text(double.IsNaN(limit.ConformityProbability) ? "-" : QuantityText.Probability(limit.ConformityProbability)),
+                new Text(QuantityText.GuardBand(limit)),
+                new Text(QuantityText.Probability(limit.ConformityProbability)),
                 Mark(limit.Decision));
             place = "";
         }

@@ -12,39 +12,43 @@ internal static class QuantityText
     {
         Quantity.SourceVoltage => "Vth",
         Quantity.InternalResistance => "Rth",
-        _ => $"droop at {Measure.Format(limit.RatedLoadOhm ?? double.NaN, Unit.Ohm)}",
+        _ => $"droop at {UncertainText.Resistance(limit.RatedLoadOhm ?? double.NaN)}",
     };
 
     public static string Value(LimitDecision limit) =>
         double.IsNaN(limit.Value)
             ? "no estimate"
-            : Measure.Format(new Expanded(limit.Value, limit.ExpandedUncertainty), UnitOf(limit.Quantity));
+            : limit.Quantity switch
+            {
+                Quantity.SourceVoltage => UncertainText.Voltage(limit.Value, limit.ExpandedUncertainty),
+                Quantity.InternalResistance => UncertainText.Resistance(limit.Value, limit.ExpandedUncertainty),
+                _ => UncertainText.Percent(limit.Value, limit.ExpandedUncertainty),
+            };
 
-    public static string Limits(LimitDecision limit)
+    public static string Limits(LimitDecision limit) => (limit.Min, limit.Max) switch
     {
-        Unit unit = UnitOf(limit.Quantity);
-        return (limit.Min, limit.Max) switch
-        {
-            ({ } min, { } max) => $"{Measure.Format(min, unit)} … {Measure.Format(max, unit)}",
-            ({ } min, null) => $"≥ {Measure.Format(min, unit)}",
-            (null, { } max) => $"≤ {Measure.Format(max, unit)}",
-            _ => "",
-        };
-    }
+        ({ } min, { } max) => $"{Plain(limit, min)} … {Plain(limit, max)}",
+        ({ } min, null) => $"≥ {Plain(limit, min)}",
+        (null, { } max) => $"≤ {Plain(limit, max)}",
+        _ => "",
+    };
 
-    public static string GuardBand(LimitDecision limit) => Measure.Format(limit.GuardBand, UnitOf(limit.Quantity), 2);
+    public static string GuardBand(LimitDecision limit) => limit.GuardFactor == 0
+        ? "simple"
+        : Plain(limit, Rounding.Significant(limit.GuardBand, 2));
 
     public static string Probability(double probability) => probability switch
     {
+        double.NaN => "-",
         > 0.9999 => "> 99.99 %",
         < 0.0001 => "< 0.01 %",
         _ => (100 * probability).ToString("0.00", CultureInfo.InvariantCulture) + " %",
     };
 
-    private static Unit UnitOf(Quantity quantity) => quantity switch
+    private static string Plain(LimitDecision limit, double value) => limit.Quantity switch
     {
-        Quantity.SourceVoltage => Unit.Volt,
-        Quantity.InternalResistance => Unit.Ohm,
-        _ => Unit.Percent,
+        Quantity.SourceVoltage => UncertainText.Voltage(value),
+        Quantity.InternalResistance => UncertainText.Resistance(value),
+        _ => UncertainText.Percent(value),
     };
 }

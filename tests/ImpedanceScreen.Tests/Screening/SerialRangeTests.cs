@@ -1,3 +1,4 @@
+using ImpedanceScreen.Limits;
 using ImpedanceScreen.Screening.Serials;
 
 namespace ImpedanceScreen.Tests.Screening;
@@ -22,5 +23,5 @@ public sealed class SerialRangeTests
     [InlineData("T6-0000012", false)]
     [InlineData("T6-000001\n", false)]
     public void A_pattern_is_matched_by_the_whole_serial_number(string serial, bool matches) =>
-        Assert.Equal(matches, SerialPatterns.Matches("T6-[0-9]{6}", serial));
+        Assert.Equal(matches, SerialNumber.Compile("T6-[0-9]{6}").IsMatch(serial));
 }

@@ -26,7 +26,7 @@ internal static class SmallJob
         OutputLimits alarmLimits = new("ALARM", [State("high", "alarm-high", 4.8, 220), State("low", "alarm-low", 2.4, 100)]);
         OutputLimits tideLimits = new("TIDE", [State("idle", null, 2.5, 1000)]);
         LimitFile limits = new(
-            new FileText("small.yaml", "small"), "Small-1", "A", "S-[0-9]{3}", 30, null, UndecidedRule.Retest, [alarmLimits, tideLimits]);
+            new FileText("small.yaml", "small"), "Small-1", "A", "S-[0-9]{3}", 30, UndecidedRule.Retest, [alarmLimits, tideLimits]);
         FixtureFile fixture = new(
             new FileText("bench.yaml", "bench"), "small-bench", "1",
             [new TcpLink("relays", "127.0.0.1", 1, TimeSpan.FromMilliseconds(100), 1), new TcpLink("meter-link", "127.0.0.1", 2, TimeSpan.FromMilliseconds(100), 1)],
