@@ -2,22 +2,22 @@ using ImpedanceScreen.Files;
 
 namespace ImpedanceScreen.Fixtures;
 
-/// <summary>Addresses of one kind on the relay units of a fixture file; each is used once.</summary>
+/// <summary>Addresses of one kind in a fixture file; each is used once within its owner.</summary>
 /// <param name="what">What is addressed, for messages.</param>
 internal sealed class AddressTable(string what)
 {
-    private readonly Dictionary<(string Unit, int Address), string> taken = [];
+    private readonly Dictionary<(string Owner, int Address), string> taken = [];
 
     /// <summary>Every address claimed so far.</summary>
-    internal IEnumerable<(string Unit, int Address)> Claimed => taken.Keys;
+    internal IEnumerable<(string Owner, int Address)> Claimed => taken.Keys;
 
-    /// <summary>Takes an address where unit and address were read well; a second use is a mistake.</summary>
-    internal void Claim(MappingReader reader, string key, string unit, int address)
+    /// <summary>Takes an address where it and its owner were read well; a second use is a mistake.</summary>
+    internal void Claim(MappingReader reader, string ownerKey, string owner, string key, int address)
     {
-        if (reader.Bound("unit", key) && !taken.TryAdd((unit, address), reader.Path))
+        if (reader.Bound(ownerKey, key) && !taken.TryAdd((owner, address), reader.Path))
         {
             reader.Mistake(
-                key, $"{what} {address} of unit `{unit}` is used already, by {taken[(unit, address)]}",
+                key, $"{what} {address} of {ownerKey} `{owner}` is used already, by {taken[(owner, address)]}",
                 "give each its own address");
         }
     }

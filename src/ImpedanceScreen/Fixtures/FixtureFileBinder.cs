@@ -1,4 +1,5 @@
 using ImpedanceScreen.Files;
+using ImpedanceScreen.Limits;
 
 namespace ImpedanceScreen.Fixtures;
 
@@ -7,9 +8,6 @@ public static class FixtureFileBinder
 {
     /// <summary>The word that a fixture file's <c>kind</c> is.</summary>
     public const string Kind = "fixture";
-
-    /// <summary>Highest voltage of a supply or rail within the program's scope, V DC.</summary>
-    internal const double HighestVoltageVolt = 60.0;
 
     /// <summary>Binds a file: the fixture file, or every mistake in it.</summary>
     public static Checked<FixtureFile> Bind(FileText file) =>
@@ -36,35 +34,51 @@ public static class FixtureFileBinder
             reader.Mapping("inputs", inputs => Inputs(inputs, names)),
             reader.OptionalMapping("handshake", handshake => Handshake(handshake, names)));
         names.Check();
+        FixtureChecks.Check(reader, fixture, names);
         return fixture;
     }
 
-    private static BoardSupply Supply(MappingReader reader, FixtureNames names) => new(
-        reader.Mapping("relay", relay => RelayReader.Relay(relay, names)),
-        reader.Number("voltage_v", new(-HighestVoltageVolt, HighestVoltageVolt)),
-        reader.Number("current_limit_a", NumberRange.Positive),
-        reader.Duration("warm_up_ms", NumberRange.UpTo(600_000)),
-        reader.Number("off_below_v", NumberRange.Positive));
+    private static BoardSupply Supply(MappingReader reader, FixtureNames names)
+    {
+        BoardSupply supply = new(
+            reader.Mapping("relay", relay => RelayReader.Relay(relay, names)),
+            ExtraLowVoltage.Dc(reader, "voltage_v", reader.Number("voltage_v", NumberRange.Any)),
+            reader.Number("current_limit_a", NumberRange.Positive),
+            reader.Duration("warm_up_ms", NumberRange.UpTo(600_000)),
+            reader.Number("off_below_v", NumberRange.Positive));
+        if (supply.OffBelowVolt >= Math.Abs(supply.VoltageVolt))
+        {
+            reader.Mistake(
+                "off_below_v", "not below the supply's own voltage", "give the voltage at which a board counts as off");
+        }
+
+        return supply;
+    }
 
     private static Stimulus Stimulus(MappingReader reader, FixtureNames names) => new(
         names.Stimuli.Declare(reader),
         reader.Mapping("relay", relay => RelayReader.Relay(relay, names)));
 
-    private static FixtureOutput Output(MappingReader reader, FixtureNames names) => new(
-        names.Outputs.Declare(reader),
-        reader.Mapping("selector", relay => RelayReader.Relay(relay, names)),
-        reader.Mapping("sense", relay => RelayReader.Relay(relay, names)),
-        names.Meters.Refer(reader, "meter"),
-        names.Banks.Refer(reader, "load_bank"),
-        reader.Text("group"),
-        reader.Word("sensing", ("two-wire", Sensing.TwoWire), ("terminal", Sensing.Terminal)),
-        new(
-            reader.Number("lead_resistance_ohm", NumberRange.ZeroOrMore),
-            reader.Number("lead_standard_uncertainty_ohm", NumberRange.ZeroOrMore)),
-        reader.Word(
-            "load_current_proof",
-            ("contact-readback", LoadCurrentProof.ContactReadback),
-            ("change-from-unloaded", LoadCurrentProof.ChangeFromUnloaded)));
+    private static FixtureOutput Output(MappingReader reader, FixtureNames names)
+    {
+        FixtureOutput output = new(
+            names.Outputs.Declare(reader),
+            reader.Mapping("selector", relay => RelayReader.Relay(relay, names)),
+            reader.Mapping("sense", relay => RelayReader.Relay(relay, names)),
+            names.Meters.Refer(reader, "meter"),
+            names.Banks.Refer(reader, "load_bank"),
+            reader.Text("group"),
+            reader.Word("sensing", ("two-wire", Sensing.TwoWire), ("terminal", Sensing.Terminal)),
+            new(
+                reader.Number("lead_resistance_ohm", NumberRange.ZeroOrMore),
+                reader.Number("lead_standard_uncertainty_ohm", NumberRange.ZeroOrMore)),
+            reader.Word(
+                "load_current_proof",
+                ("contact-readback", LoadCurrentProof.ContactReadback),
+                ("change-from-unloaded", LoadCurrentProof.ChangeFromUnloaded)));
+        names.Later(() => FixtureChecks.CheckProof(reader, output, names));
+        return output;
+    }
 
     private static TemperatureSensor Sensor(MappingReader reader, FixtureNames names) => new(
         names.Units.Refer(reader, "unit"),
@@ -72,10 +86,16 @@ public static class FixtureFileBinder
         reader.Number("deg_c_per_count", NumberRange.Positive),
         reader.Number("standard_uncertainty_deg_c", NumberRange.ZeroOrMore));
 
-    private static BenchInputs Inputs(MappingReader reader, FixtureNames names) => new(
-        reader.OptionalMapping("board_present", input => RelayReader.Input(input, names)),
-        reader.Mapping("interlock", input => RelayReader.Input(input, names)),
-        reader.Duration("poll_ms", new(1, 1000)));
+    private static BenchInputs Inputs(MappingReader reader, FixtureNames names)
+    {
+        BenchInputs inputs = new(
+            reader.OptionalMapping("board_present", input => RelayReader.Input(input, names)),
+            reader.Mapping("interlock", input => RelayReader.Input(input, names)),
+            reader.Duration("poll_ms", new(1, 1000)));
+        names.InputsReader = reader;
+        names.Poll = reader.Bound("poll_ms") ? inputs.Poll : null;
+        return inputs;
+    }
 
     private static Handshake Handshake(MappingReader reader, FixtureNames names) => new(
         reader.Mapping("pass_bin", relay => RelayReader.Relay(relay, names)),

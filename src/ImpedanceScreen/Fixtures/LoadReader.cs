@@ -1,4 +1,5 @@
 using ImpedanceScreen.Files;
+using ImpedanceScreen.Limits;
 using ImpedanceScreen.Quantities;
 
 namespace ImpedanceScreen.Fixtures;
@@ -8,9 +9,19 @@ internal static class LoadReader
 {
     private const double PartsPerMillion = 1e-6;
 
-    internal static LoadBank Bank(MappingReader reader, FixtureNames names) => new(
-        names.Banks.Declare(reader),
-        reader.Mappings("loads", 1, load => Load(load, names)));
+    internal static LoadBank Bank(MappingReader reader, FixtureNames names)
+    {
+        LoadBank bank = new(
+            names.Banks.Declare(reader),
+            reader.Mappings("loads", 1, load => Load(load, names)));
+        if (reader.Bound("name", "loads"))
+        {
+            names.LoadsWithoutContact[bank.Name] = string.Join(
+                ", ", bank.Loads.Where(load => load.Relay.ContactInput is null).Select(load => load.Name));
+        }
+
+        return bank;
+    }
 
     internal static LoadReturn Return(MappingReader reader, FixtureNames names) => new(
         names.Returns.Declare(reader),
@@ -18,7 +29,7 @@ internal static class LoadReader
         reader.Mapping("sense_relay", relay => RelayReader.Relay(relay, names)),
         names.Meters.Refer(reader, "meter"),
         new(
-            reader.Number("voltage_v", new(-FixtureFileBinder.HighestVoltageVolt, FixtureFileBinder.HighestVoltageVolt)),
+            ExtraLowVoltage.Dc(reader, "voltage_v", reader.Number("voltage_v", NumberRange.Any)),
             reader.Number("voltage_standard_uncertainty_v", NumberRange.ZeroOrMore)),
         reader.Number("current_limit_a", NumberRange.Positive));
 

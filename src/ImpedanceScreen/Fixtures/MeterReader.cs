@@ -23,6 +23,8 @@ internal static class MeterReader
             on,
             due,
             reader.Mappings("ranges", 1, Range));
+        LinkReader.UseLink(reader, meter.Link, isMeter: true, names);
+        names.Later(() => LinkReader.CheckTimeout(reader, "integration_ms", meter.Integration, meter.Link, names));
         CheckRanges(reader, meter);
         CheckIntegration(reader, meter);
         return meter;

@@ -10,10 +10,10 @@ internal static class RelayReader
         string unit = names.Units.Refer(reader, "unit");
         int coil = reader.Integer("coil", 0, ushort.MaxValue);
         int? contact = reader.OptionalInteger("contact_input", 0, ushort.MaxValue);
-        names.Coils.Claim(reader, "coil", unit, coil);
+        names.Coils.Claim(reader, "unit", unit, "coil", coil);
         if (contact is not null)
         {
-            names.Inputs.Claim(reader, "contact_input", unit, contact.Value);
+            names.Inputs.Claim(reader, "unit", unit, "contact_input", contact.Value);
         }
 
         return new(unit, (ushort)coil, (ushort?)contact);
@@ -23,7 +23,7 @@ internal static class RelayReader
     {
         string unit = names.Units.Refer(reader, "unit");
         int address = reader.Integer("input", 0, ushort.MaxValue);
-        names.Inputs.Claim(reader, "input", unit, address);
+        names.Inputs.Claim(reader, "unit", unit, "input", address);
         return new(unit, (ushort)address);
     }
 }

@@ -1,3 +1,4 @@
+using System.Globalization;
 using ImpedanceScreen.Files;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Limits;
@@ -8,8 +9,9 @@ namespace ImpedanceScreen.Jobs;
 internal static class StateJobBinder
 {
     /// <summary>The state job; null after a mistake that leaves something without a meaning.</summary>
-    internal static StateJob? Bind(OutputLimits output, DriveState state, FixtureFile fixture, JobMistakes mistakes)
+    internal static StateJob? Bind(OutputLimits output, DriveState state, ScreeningFiles files, JobMistakes mistakes)
     {
+        FixtureFile fixture = files.Fixture;
         int before = mistakes.Count;
         FixtureOutput? way = Find(
             fixture.Outputs, item => item.Name, output.Name, "output", mistakes.AtOutput, "name");
@@ -29,17 +31,35 @@ internal static class StateJobBinder
             return null;
         }
 
-        double highest = Math.Max(
-            state.UnloadedWindowVolt.LargestMagnitude, Math.Abs(loadReturn?.VoltageVolt.Value ?? 0.0));
-        if (meter.Ranges.FirstOrDefault(range => range.FullScaleVolt >= highest) is not { } range)
+        if (Range(meter, state, loadReturn, mistakes) is not { } range)
         {
-            mistakes.AtState(
-                "unloaded_window_v", $"no range of meter `{meter.Name}` holds {highest:G6} V",
-                "narrow the window, or use a meter with a higher range");
             return null;
         }
 
-        return new(way, state, stimulus, loadReturn, loads, meter, range);
+        StateJob job = new(way, state, stimulus, loadReturn, loads, meter, range);
+        StateChecks.CheckLoading(job, files, mistakes);
+        StateChecks.CheckDwell(job, fixture, mistakes);
+        StateChecks.CheckRatedLoad(job, mistakes);
+        StateChecks.CheckProof(job, mistakes);
+        StateChecks.CheckCurrentFlows(job, mistakes);
+        return job;
+    }
+
+    // A loaded voltage lies between the unloaded one and the return, so these two bound all that is read.
+    private static MeterRange? Range(Meter meter, DriveState state, LoadReturn? loadReturn, JobMistakes mistakes)
+    {
+        double highest = Math.Max(
+            state.UnloadedWindowVolt.LargestMagnitude, SafeLoading.ReturnVolt(loadReturn).LargestMagnitude);
+        MeterRange? range = meter.Ranges.FirstOrDefault(range => range.FullScaleVolt >= highest);
+        if (range is null)
+        {
+            mistakes.AtState(
+                "unloaded_window_v",
+                string.Create(CultureInfo.InvariantCulture, $"no range of meter `{meter.Name}` holds {highest:G6} V"),
+                "narrow the window, use another return, or use a meter with a higher range");
+        }
+
+        return range;
     }
 
     private static List<Load> Loads(DriveState state, LoadBank bank, JobMistakes mistakes)

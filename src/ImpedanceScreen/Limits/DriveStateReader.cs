@@ -97,13 +97,17 @@ internal static class DriveStateReader
 
         foreach (QuantityLimit limit in state.Limits.Where(limit => !limit.Holds(limit.Of(nominal))))
         {
-            // Droop to a rail depends on the rail, which only the fixture file knows.
-            if (limit.Quantity != Quantity.Droop || state.LoadReturn is null)
-            {
-                reader.Mistake(
-                    "limits", $"`{QuantityLimitReader.KeyOf(limit.Quantity)}` refuses the nominal source itself",
-                    "correct the limit or the nominal values");
-            }
+            reader.Mistake(
+                "limits", $"`{QuantityLimitReader.KeyOf(limit.Quantity)}` refuses the nominal source itself",
+                "correct the limit or the nominal values");
+        }
+
+        bool droop = state.Limits.Any(limit => limit.Quantity == Quantity.Droop);
+        if (droop && (nominal.SourceVoltageVolt == 0.0 || reader.Holds("load_return")))
+        {
+            reader.Mistake(
+                "limits", "`droop_percent` is a fraction of the source voltage, loaded to common: it has no meaning here",
+                "limit the internal resistance instead");
         }
     }
 }

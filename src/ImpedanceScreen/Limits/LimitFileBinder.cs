@@ -8,22 +8,14 @@ public static class LimitFileBinder
     /// <summary>The word that a limit file's <c>kind</c> is.</summary>
     public const string Kind = "limits";
 
-    /// <summary>Highest DC voltage within the program's scope, V.</summary>
-    public const double HighestVoltageVolt = 60.0;
-
-    /// <summary>Highest AC voltage within the program's scope, V rms.</summary>
-    public const double HighestVoltageVoltAcRms = 25.0;
-
-    private const string ScopeCure =
-        "screen this product on other equipment; the bound is the program's scope and says nothing about safety below it";
-
     /// <summary>Binds a file: the limit file, or every mistake in it.</summary>
     public static Checked<LimitFile> Bind(FileText file) =>
         FileBinder.Bind(file, Kind, reader => Read(file, reader));
 
     private static LimitFile Read(FileText file, MappingReader reader)
     {
-        double ceiling = Ceiling(reader);
+        double ceiling = ExtraLowVoltage.Dc(
+            reader, "voltage_ceiling_v", reader.Number("voltage_ceiling_v", NumberRange.Positive));
         NameTable outputs = new("output");
         LimitFile limits = new(
             file,
@@ -33,7 +25,9 @@ public static class LimitFileBinder
             ceiling,
             reader.Word("undecided", ("retest", UndecidedRule.Retest), ("fail", UndecidedRule.Fail)),
             reader.Mappings("outputs", 1, output => Output(output, outputs, ceiling)),
-            AcCeiling(reader));
+            ExtraLowVoltage.AcRms(
+                reader, "voltage_ceiling_v_ac_rms",
+                reader.OptionalNumber("voltage_ceiling_v_ac_rms", NumberRange.Positive)));
         outputs.Check();
         return limits;
     }
@@ -46,28 +40,6 @@ public static class LimitFileBinder
             reader.Mappings("states", 1, state => DriveStateReader.Read(state, states, ceiling)));
         states.Check();
         return output;
-    }
-
-    private static double Ceiling(MappingReader reader)
-    {
-        double ceiling = reader.Number("voltage_ceiling_v", NumberRange.Positive);
-        if (ceiling > HighestVoltageVolt)
-        {
-            reader.Mistake("voltage_ceiling_v", "above 60 V DC, beyond extra-low voltage", ScopeCure);
-        }
-
-        return ceiling;
-    }
-
-    private static double? AcCeiling(MappingReader reader)
-    {
-        double? ceiling = reader.OptionalNumber("voltage_ceiling_v_ac_rms", NumberRange.Positive);
-        if (ceiling > HighestVoltageVoltAcRms)
-        {
-            reader.Mistake("voltage_ceiling_v_ac_rms", "above 25 V AC rms, beyond extra-low voltage", ScopeCure);
-        }
-
-        return ceiling;
     }
 
     private static string SerialPattern(MappingReader reader)

@@ -1,0 +1,110 @@
+using System.Globalization;
+using ImpedanceScreen.Fixtures;
+using ImpedanceScreen.Limits;
+using ImpedanceScreen.Quantities;
+
+namespace ImpedanceScreen.Jobs;
+
+/// <summary>Checks of one output in one drive state against the fixture it is screened on.</summary>
+internal static class StateChecks
+{
+    // A droop at the rated load is read off the fitted line; a little beyond the heaviest load is still on it.
+    private const double RatedLoadReach = 1.1;
+
+    /// <summary>Every load of the plan, worst case against its rating and what the output is allowed.</summary>
+    internal static void CheckLoading(StateJob job, ScreeningFiles files, JobMistakes mistakes)
+    {
+        Window present = SafeLoading.PresentVolt(
+            job.State, job.LoadReturn, files.Fixture.BoardSupply, files.Limits.VoltageCeilingVolt);
+        foreach (Load load in job.Loads)
+        {
+            if (SafeLoading.Refusal(job.State, job.LoadReturn, load, present) is { } reason)
+            {
+                mistakes.AtState(
+                    $"loads[{IndexOf(job.State.Loads, load.Name)}]", reason,
+                    "take a load of higher resistance or rating, or correct `allowed` or the unloaded window");
+            }
+        }
+    }
+
+    /// <summary>The plan's time under load against the allowed dwell; exchanges with the instruments come on top.</summary>
+    internal static void CheckDwell(StateJob job, FixtureFile fixture, JobMistakes mistakes)
+    {
+        TimeSpan reading = job.Meter.Integration * job.State.ReadingsPerLoadPoint;
+        TimeSpan total = TimeSpan.Zero;
+        foreach (Load load in job.Loads)
+        {
+            RelayUnit unit = fixture.RelayUnits.First(item => item.Name == load.Relay.Unit);
+            total += unit.Operate + job.State.Settle + (job.LoadReturn is null ? reading : reading * 2);
+        }
+
+        if (total > job.State.Allowed.Dwell)
+        {
+            mistakes.AtState(
+                "allowed.dwell_s",
+                Invariant($"the plan keeps the output under load for {total.TotalSeconds:G3} s"),
+                "use fewer loads or readings, or shorter settling, or allow a longer dwell");
+        }
+    }
+
+    /// <summary>Droop limits need a rated load that the plan's currents reach.</summary>
+    internal static void CheckRatedLoad(StateJob job, JobMistakes mistakes)
+    {
+        Load heaviest = job.Loads[^1];
+        foreach (QuantityLimit limit in job.State.Limits)
+        {
+            if (limit.RatedLoadOhm * RatedLoadReach < heaviest.ResistanceOhm)
+            {
+                mistakes.AtState(
+                    "limits.droop_percent.rated_load_ohm",
+                    Invariant($"heavier than the heaviest load of the plan, `{heaviest.Name}` of {heaviest.ResistanceOhm:G6} ohm"),
+                    "add a load near the rated load: nothing is extrapolated");
+            }
+        }
+    }
+
+    /// <summary>Without a contact to read, only a change of the voltage proves that load current flowed.</summary>
+    internal static void CheckProof(StateJob job, JobMistakes mistakes)
+    {
+        Load heaviest = job.Loads[^1];
+        double change = LoadProof.NominalChangeVolt(job, heaviest);
+        double uncertainty = LoadProof.ChangeUncertaintyVolt(job.Range, job.State.ReadingsPerLoadPoint);
+        if (job.Output.LoadCurrentProof == LoadCurrentProof.ContactReadback
+            || change >= LoadProof.ProvingFactor * uncertainty)
+        {
+            return;
+        }
+
+        string seen = Invariant(
+            $"the heaviest load changes a good output by {change * 1e6:G3} uV only (standard uncertainty {uncertainty * 1e6:G3} uV)");
+        const string cure = "wire contact readback on the loads, take a heavier load or more readings";
+        QuantityLimit? satisfied = job.State.Limits.FirstOrDefault(LoadProof.IsSatisfiedByZeroChange);
+        if (satisfied is null)
+        {
+            mistakes.AtState("loads", $"{seen}: no load point would count", cure);
+        }
+        else
+        {
+            mistakes.AtState(
+                "limits." + QuantityLimitReader.KeyOf(satisfied.Quantity),
+                $"a load that never came on would satisfy it; {seen}", cure);
+        }
+    }
+
+    /// <summary>A load that returns to the output's own voltage draws no current.</summary>
+    internal static void CheckCurrentFlows(StateJob job, JobMistakes mistakes)
+    {
+        if (SafeLoading.ReturnVolt(job.LoadReturn).Contains(job.State.Nominal.SourceVoltageVolt))
+        {
+            mistakes.AtState(
+                job.State.LoadReturn is null ? "nominal.source_voltage_v" : "load_return",
+                "no load current flows: the load returns to the output's own voltage",
+                "return the loads of this state to a rail of another voltage");
+        }
+    }
+
+    private static int IndexOf(IReadOnlyList<string> names, string name) =>
+        Enumerable.Range(0, names.Count).First(i => names[i] == name);
+
+    private static string Invariant(FormattableString text) => text.ToString(CultureInfo.InvariantCulture);
+}
