@@ -39,10 +39,9 @@ public sealed class BoardAttempt
         this.order = order;
         this.settings = settings;
         this.status = status;
-        FixtureFile fixture = order.Job.Fixture;
         ledger = new TimeLedger(settings.Time);
-        watch = new BenchWatch(bench, fixture.Inputs.Poll, settings.Time);
-        runner = new LoadPointRunner(bench, fixture, watch, ledger, settings.Time, settings.TimeScale);
+        watch = new BenchWatch(bench, order.Job.Fixture.Inputs.Poll, settings.Time);
+        runner = new LoadPointRunner(bench, order.Job, watch, ledger, settings.Time, settings.TimeScale);
         pointsPlanned = order.Job.States.Sum(state => state.Loads.Count + 2);
     }
 

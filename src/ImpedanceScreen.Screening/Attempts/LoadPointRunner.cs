@@ -12,11 +12,11 @@ namespace ImpedanceScreen.Screening.Attempts;
 /// meter reads another.
 /// </summary>
 internal sealed class LoadPointRunner(
-    IBench bench, FixtureFile fixture, BenchWatch watch, TimeLedger ledger, TimeProvider time, double timeScale)
+    IBench bench, ScreeningJob job, BenchWatch watch, TimeLedger ledger, TimeProvider time, double timeScale)
 {
     // Which sense relay is closed at each meter: a meter sees one output at a time.
     private readonly Dictionary<string, Relay> sensed = [];
-    private readonly HashSet<Relay> loadRelays = [.. fixture.LoadBanks.SelectMany(bank => bank.Loads, (_, load) => load.Relay)];
+    private readonly HashSet<Relay> loadRelays = [.. job.Fixture.LoadBanks.SelectMany(bank => bank.Loads, (_, load) => load.Relay)];
 
     // Where the far ends of the loads go: the same for all lanes of a wave, so that no lane opens it for another.
     private Relay? loadReturn;
@@ -41,7 +41,7 @@ internal sealed class LoadPointRunner(
             open.Add(closed.Relay);
         }
 
-        Relay? wanted = state.LoadReturn?.Relay ?? fixture.CommonReturn;
+        Relay? wanted = state.LoadReturn?.Relay ?? job.Fixture.CommonReturn;
         if (wanted != loadReturn)
         {
             AddIfAny(open, loadReturn);
@@ -65,7 +65,7 @@ internal sealed class LoadPointRunner(
 
         if (open.Count > 0)
         {
-            await SwitchAsync(lane, open, [], cancellation);
+            await ledger.SwitchingAsync(bench.SwitchAsync(new SwitchOrder(open, []), cancellation));
         }
 
         lane.Path = [];
@@ -81,7 +81,7 @@ internal sealed class LoadPointRunner(
             return;
         }
 
-        if (wanted is not null && SafeLoading.Refusal(lane.State!, wanted) is { } refusal)
+        if (wanted is not null && SafeLoading.Refusal(job, lane.State!, wanted) is { } refusal)
         {
             throw new BenchFaultException(BenchFault.OrderRefused, refusal);
         }

@@ -97,7 +97,7 @@ public sealed class BenchWatch
                 using var pause = CancellationTokenSource.CreateLinkedTokenSource(cancellation);
                 Task due = Task.Delay(nextPoll.Remaining, time, pause.Token);
                 await Task.WhenAny(running, due);
-                await pause.CancelAsync();
+                pause.Cancel();
                 if (!running.IsCompleted)
                 {
                     await PollAsync(cancellation);

@@ -1,5 +1,6 @@
+using System.Text;
 using ImpedanceScreen.Recording;
-using ImpedanceScreen.Records;
+using ImpedanceScreen.Records.Bodies;
 using ImpedanceScreen.Screening.Lots;
 
 namespace ImpedanceScreen.Station.Showing;
@@ -12,7 +13,7 @@ internal sealed class JsonLinesView : IResultView
     public void Add(BoardRecord record)
     {
         LastDisposition = record.Disposition;
-        Console.Out.WriteLine(RecordBody.ToCanonicalJson(record));
+        Console.Out.WriteLine(Encoding.UTF8.GetString(BodyCodec.Encode(record)));
         Console.Out.Flush();
     }
 

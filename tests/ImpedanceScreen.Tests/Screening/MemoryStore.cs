@@ -1,5 +1,6 @@
 using ImpedanceScreen.Files;
 using ImpedanceScreen.Recording;
+using Record = ImpedanceScreen.Recording.Record;
 
 namespace ImpedanceScreen.Tests.Screening;
 

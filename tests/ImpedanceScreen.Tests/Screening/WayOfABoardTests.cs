@@ -25,9 +25,9 @@ public sealed class WayOfABoardTests
     private IEnumerable<BoardRecord> Boards => store.Records.OfType<BoardRecord>();
 
     [Fact]
-    public async Task A_good_lot_passes_and_is_closed()
+    public void A_good_lot_passes_and_is_closed()
     {
-        LotEnd end = await RunAsync(["S-001", "S-002"]);
+        LotEnd end = Run(["S-001", "S-002"]);
 
         Assert.Equal(LotEndKind.Complete, end.Kind);
         Assert.All(Boards, board => Assert.Equal((Disposition.Pass, ""), (board.Disposition, board.Cause)));
@@ -38,9 +38,9 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task The_handshake_keeps_its_order_and_no_board_is_sorted_before_its_record()
+    public void The_handshake_keeps_its_order_and_no_board_is_sorted_before_its_record()
     {
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
 
         string[] steps =
         [
@@ -57,9 +57,9 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task All_relays_open_before_anything_else_and_unloaded_is_read_before_any_load_closes()
+    public void All_relays_open_before_anything_else_and_unloaded_is_read_before_any_load_closes()
     {
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
 
         Assert.Equal(["start", "open all"], bench.Events.Take(2));
         int firstRead = bench.Events.IndexOf("read");
@@ -68,9 +68,9 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task Supply_comes_first_and_goes_off_before_the_outputs_are_proved_discharged()
+    public void Supply_comes_first_and_goes_off_before_the_outputs_are_proved_discharged()
     {
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
 
         List<string> switched = [.. bench.Events.Where(each => each.StartsWith("switch", StringComparison.Ordinal))];
         Assert.Equal("switch open - close 30", switched[0]);
@@ -79,7 +79,7 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task Inputs_are_read_at_their_interval_during_settling_and_reading()
+    public void Inputs_are_read_at_their_interval_during_settling_and_reading()
     {
         List<DateTimeOffset> polls = [];
         bench.Before = each =>
@@ -89,18 +89,18 @@ public sealed class WayOfABoardTests
                 polls.Add(time.GetUtcNow());
             }
         };
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
 
         int largest = polls.Zip(polls.Skip(1), (one, next) => (int)(next - one).TotalMilliseconds).Max();
         Assert.InRange(largest, 0, (int)job.Fixture.Inputs.Poll.TotalMilliseconds + 1);
     }
 
     [Fact]
-    public async Task A_broken_interlock_opens_the_relays_next_and_the_attempt_is_aborted()
+    public void A_broken_interlock_opens_the_relays_next_and_the_attempt_is_aborted()
     {
         int polls = 0;
         bench.Inputs = inputs => ++polls == 25 ? inputs with { InterlockClosed = false } : inputs;
-        LotEnd end = await RunAsync(["S-001"]);
+        LotEnd end = Run(["S-001"]);
 
         Assert.Equal(LotEndKind.Complete, end.Kind);
         Assert.Equal([Disposition.Aborted, Disposition.Pass], Boards.Select(board => board.Disposition));
@@ -112,20 +112,20 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task A_lifted_board_is_aborted_and_screened_again_when_it_is_back()
+    public void A_lifted_board_is_aborted_and_screened_again_when_it_is_back()
     {
         int polls = 0;
         bench.Inputs = inputs => ++polls is >= 25 and < 40 ? inputs with { BoardPresent = false } : inputs;
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
 
         Assert.Equal([Disposition.Aborted, Disposition.Pass], Boards.Select(board => board.Disposition));
     }
 
     [Fact]
-    public async Task Relays_that_do_not_open_put_the_bench_on_hold_and_nothing_is_sorted()
+    public void Relays_that_do_not_open_put_the_bench_on_hold_and_nothing_is_sorted()
     {
         bench.Before = each => bench.CanOpen = bench.CanOpen && each != "read";
-        LotEnd end = await RunAsync(["S-001", "S-002"]);
+        LotEnd end = Run(["S-001", "S-002"]);
 
         Assert.Equal(LotEndKind.OnHold, end.Kind);
         Assert.Contains("unit a coil 1", end.Words, StringComparison.Ordinal);
@@ -135,7 +135,7 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task One_bench_fault_is_worked_through_a_second_in_a_row_holds()
+    public void One_bench_fault_is_worked_through_a_second_in_a_row_holds()
     {
         int reads = 0;
         bench.Before = each =>
@@ -145,7 +145,7 @@ public sealed class WayOfABoardTests
                 throw new BenchFaultException(BenchFault.MeterLost, "meter gives no answer: look at its cable");
             }
         };
-        LotEnd end = await RunAsync(["S-001"]);
+        LotEnd end = Run(["S-001"]);
 
         Assert.Equal(LotEndKind.OnHold, end.Kind);
         Assert.Contains("cable", end.Words, StringComparison.Ordinal);
@@ -153,10 +153,10 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task A_record_that_cannot_be_kept_sorts_nothing()
+    public void A_record_that_cannot_be_kept_sorts_nothing()
     {
         store.Fault = record => record is BoardRecord ? new StoreFaultException("disk full") : null;
-        LotEnd end = await RunAsync(["S-001"]);
+        LotEnd end = Run(["S-001"]);
 
         Assert.Equal(LotEndKind.StoreFault, end.Kind);
         Assert.DoesNotContain(bench.Events, each => each.Contains("done", StringComparison.Ordinal));
@@ -164,7 +164,7 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task Told_to_stop_the_relays_open_and_the_attempt_is_recorded_as_aborted()
+    public void Told_to_stop_the_relays_open_and_the_attempt_is_recorded_as_aborted()
     {
         using var stop = new CancellationTokenSource();
         int reads = 0;
@@ -175,7 +175,7 @@ public sealed class WayOfABoardTests
                 stop.Cancel();
             }
         };
-        LotEnd end = await RunAsync(["S-001"], stop: stop.Token);
+        LotEnd end = Run(["S-001"], stop: stop.Token);
 
         Assert.Equal(LotEndKind.Stopped, end.Kind);
         Assert.Equal(Disposition.Aborted, Assert.Single(Boards).Disposition);
@@ -183,12 +183,12 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
-    public async Task A_board_that_failed_before_does_not_pass_by_being_tried_again()
+    public void A_board_that_failed_before_does_not_pass_by_being_tried_again()
     {
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
         store.Records[0] = Boards.First() with { Disposition = Disposition.Fail, Lot = "another" };
         bench.Present = true;
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
 
         Assert.Equal(Disposition.Fail, Boards.Last().Disposition);
         Assert.Contains("earlier attempt failed", Boards.Last().Cause, StringComparison.Ordinal);
@@ -200,32 +200,32 @@ public sealed class WayOfABoardTests
         await store.BeginAttemptAsync(new AttemptStart(
             Guid.CreateVersion7(), "Small-1", "S-001", "lot", "small-bench", time.GetUtcNow()));
         bench.Handshake = new HandshakeState(SortBin.None, Busy: true, Done: false);
-        await RunAsync(["S-001", "S-002"]);
+        Run(["S-001", "S-002"]);
 
         Assert.Equal(["S-001", "S-001", "S-002"], Boards.Select(board => board.Serial));
         Assert.Equal([Disposition.Aborted, Disposition.Pass, Disposition.Pass], Boards.Select(board => board.Disposition));
     }
 
     [Fact]
-    public async Task A_board_of_unknown_identity_holds_until_a_person_names_it()
+    public void A_board_of_unknown_identity_holds_until_a_person_names_it()
     {
-        await RunAsync(["S-001"]);
+        Run(["S-001"]);
         store.Unfinished.Add(new UnfinishedAttempt(
             new AttemptStart(Boards.First().AttemptId, "Small-1", "S-001", "lot", "small-bench", time.GetUtcNow()), Disposition.Pass));
         bench.Present = true;
-        LotEnd unknown = await RunAsync(["S-001", "S-002"]);
-        LotEnd named = await RunAsync(["S-001", "S-002"], inNest: "S-002");
+        LotEnd unknown = Run(["S-001", "S-002"]);
+        LotEnd named = Run(["S-001", "S-002"], inNest: "S-002");
 
         Assert.Equal(LotEndKind.OnHold, unknown.Kind);
         Assert.Equal(LotEndKind.Complete, named.Kind);
         Assert.Equal(["S-001", "S-002"], Boards.Select(board => board.Serial));
     }
 
-    private async Task<LotEnd> RunAsync(string[] serials, string? inNest = null, CancellationToken stop = default)
+    private LotEnd Run(string[] serials, string? inNest = null, CancellationToken stop = default)
     {
         var order = new LotOrder(job, "lot", "jo", new ListedSerials(serials), inNest);
         var runner = new LotRunner(
             bench, store, new StatusBoard(time), order, new RunSettings("1.0", 1.0, time), NullLogger<LotRunner>.Instance);
-        return await FakeTime.RunAsync(time, runner.RunAsync(stop));
+        return FakeTime.Run(time, () => runner.RunAsync(stop));
     }
 }
