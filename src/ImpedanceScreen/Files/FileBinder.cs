@@ -22,7 +22,7 @@ public static class FileBinder
             return Checked<T>.Bad(mistakes.InOrder());
         }
 
-        MappingReader reader = new(root, "", mistakes);
+        MappingReader reader = new(root, root.Mark, "", mistakes);
         string written = reader.Text("kind");
         if (reader.Bound("kind") && written != kind)
         {

@@ -8,13 +8,17 @@ namespace ImpedanceScreen.Files;
 public sealed class MappingReader
 {
     private readonly YamlMapping mapping;
+    private readonly Mark place;
     private readonly MistakeList mistakes;
     private readonly HashSet<string> asked = new(StringComparer.Ordinal);
     private readonly HashSet<string> bound = new(StringComparer.Ordinal);
+    private readonly List<string> missing = [];
 
-    internal MappingReader(YamlMapping mapping, string path, MistakeList mistakes)
+    // The place is that of the mapping's own key; for the file and for items of a list it is where they begin.
+    internal MappingReader(YamlMapping mapping, Mark place, string path, MistakeList mistakes)
     {
         this.mapping = mapping;
+        this.place = place;
         this.mistakes = mistakes;
         Path = path;
     }
@@ -44,7 +48,7 @@ public sealed class MappingReader
     /// <param name="problem">What is wrong.</param>
     /// <param name="cure">What to do about it.</param>
     public void Mistake(string key, string problem, string cure) =>
-        mistakes.Add(mapping.Find(key)?.KeyMark ?? mapping.Mark, PathOf(key), problem, cure);
+        mistakes.Add(mapping.Find(key)?.KeyMark ?? place, PathOf(key), problem, cure);
 
     /// <summary>Text, taken as it stands: <c>1.10</c> stays 1.10.</summary>
     public string Text(string key) => Scalar(key, true, "", ScalarParser.Text, "write text");
@@ -143,7 +147,7 @@ public sealed class MappingReader
         {
             if (item is YamlMapping nested)
             {
-                return [Read(nested, path, read)];
+                return [Read(nested, nested.Mark, path, read)];
             }
 
             Report(item, path, "is not a mapping", "write its keys as `key: value`");
@@ -174,7 +178,10 @@ public sealed class MappingReader
         });
     }
 
-    /// <summary>Reports every key that nobody asked for, with the nearest right one.</summary>
+    /// <summary>
+    /// Reports every key that nobody asked for, with the nearest right one, and every missing key that none of them was
+    /// meant to be.
+    /// </summary>
     internal void Close()
     {
         foreach (YamlEntry entry in mapping.Entries.Where(entry => !asked.Contains(entry.Key)))
@@ -186,7 +193,10 @@ public sealed class MappingReader
             mistakes.Add(
                 entry.KeyMark, PathOf(entry.Key), "unknown key",
                 nearest is null ? $"known here: {known}" : $"did you mean `{nearest}`?");
+            missing.Remove(nearest ?? "");
         }
+
+        missing.ForEach(key => mistakes.Add(mapping.Mark, PathOf(key), "the key is missing", "add it"));
     }
 
     private const string NumberCure = "write a decimal number with a point, as 0.25 or 1.5e-3, without unit or separators";
@@ -230,12 +240,13 @@ public sealed class MappingReader
             return mapping.Find(key)!.Value;
         }
 
-        if (required)
+        if (required && mapping.Find(key) is not null)
         {
-            YamlEntry? empty = mapping.Find(key);
-            mistakes.Add(
-                empty?.KeyMark ?? mapping.Mark, PathOf(key),
-                empty is null ? "the key is missing" : "the value is missing", "add it");
+            Mistake(key, "the value is missing", "add it");
+        }
+        else if (required)
+        {
+            missing.Add(key);
         }
 
         return null;
@@ -265,7 +276,7 @@ public sealed class MappingReader
         if (node is YamlMapping nested)
         {
             int before = mistakes.Count;
-            T value = Read(nested, PathOf(key), read);
+            T value = Read(nested, mapping.Find(key)!.KeyMark, PathOf(key), read);
             return mistakes.Count == before ? Known(key, value) : value;
         }
 
@@ -277,9 +288,9 @@ public sealed class MappingReader
         return default;
     }
 
-    private T Read<T>(YamlMapping nested, string path, Func<MappingReader, T> read)
+    private T Read<T>(YamlMapping nested, Mark at, string path, Func<MappingReader, T> read)
     {
-        MappingReader reader = new(nested, path, mistakes);
+        MappingReader reader = new(nested, at, path, mistakes);
         T value = read(reader);
         reader.Close();
         return value;

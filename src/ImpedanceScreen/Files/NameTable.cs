@@ -22,6 +22,8 @@ public sealed class NameTable(string what)
         }
         else if (!declared.TryAdd(name, reader.Path))
         {
+            // One of the two was meant to be another name.
+            incomplete = true;
             reader.Mistake(
                 "name", $"the {what} `{name}` is there already, at {declared[name]}", "give each a name of its own");
         }

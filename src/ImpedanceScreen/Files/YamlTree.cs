@@ -39,16 +39,28 @@ public sealed class YamlTree
             return null;
         }
 
+        YamlTree tree = new(file.Text, mistakes);
         try
         {
-            return new YamlTree(file.Text, mistakes).ReadStream();
+            return tree.ReadStream();
         }
         catch (YamlException error)
         {
-            mistakes.Clear();
-            mistakes.Add(At(error.Start), "", "not readable as YAML: " + Sentence(error), "mend the line or the one above");
-            return null;
+            return tree.Unreadable(At(error.Start), error.Message.TrimEnd('.', ' '));
         }
+        catch (Exception error) when (error is InvalidOperationException or ArgumentException)
+        {
+            // The parser's own slips: a flow list that is never closed, an escape beyond Unicode.
+            Mark after = tree.parser.Current is { } last ? At(last.End) : new(1, 1);
+            return tree.Unreadable(after, "a bracket that is not closed or an impossible escape follows");
+        }
+    }
+
+    private YamlMapping? Unreadable(Mark mark, string why)
+    {
+        mistakes.Clear();
+        mistakes.Add(mark, "", "not readable as YAML: " + why, "mend what begins or ends here");
+        return null;
     }
 
     private YamlMapping? ReadStream()
@@ -187,7 +199,4 @@ public sealed class YamlTree
     }
 
     private static Mark At(YamlDotNet.Core.Mark mark) => new((int)Math.Max(1, mark.Line), (int)Math.Max(1, mark.Column));
-
-    // The parser's own message is a sentence about its grammar; its place is given by the mark.
-    private static string Sentence(YamlException error) => error.Message.TrimEnd('.', ' ');
 }

@@ -22,7 +22,9 @@ public static class SafeLoading
     {
         ArgumentNullException.ThrowIfNull(job);
         ArgumentNullException.ThrowIfNull(state);
-        return Refusal(state.State, state.LoadReturn, load, PresentVolt(state.State, state.LoadReturn, job.Fixture.BoardSupply, job.Limits.VoltageCeilingVolt));
+        Window present = PresentVolt(
+            state.State, state.LoadReturn, job.Fixture.BoardSupply, job.Limits.VoltageCeilingVolt);
+        return Refusal(state.State, state.LoadReturn, load, present);
     }
 
     /// <summary>
@@ -98,21 +100,30 @@ public static class SafeLoading
     internal static string? Refusal(DriveState state, LoadReturn? loadReturn, Load load, Window presentVolt)
     {
         double loadPower = LoadPowerWatt(load, presentVolt, loadReturn);
-        double current = OutputCurrentAmpere(state, loadReturn, load);
-        double outputPower = OutputPowerWatt(state, loadReturn, load);
-        FormattableString? reason = 0 switch
+        if (loadPower > load.PowerRatingWatt)
         {
-            _ when loadPower > load.PowerRatingWatt =>
-                $"load `{load.Name}` may take {loadPower:G3} W and is rated {load.PowerRatingWatt:G3} W",
-            _ when current > state.Allowed.CurrentAmpere =>
-                $"load `{load.Name}` may draw {current:G3} A of the output's allowed {state.Allowed.CurrentAmpere:G3} A",
-            _ when outputPower > state.Allowed.PowerWatt =>
-                $"load `{load.Name}` may draw {outputPower:G3} W of the output's allowed {state.Allowed.PowerWatt:G3} W",
-            _ when loadReturn is not null && current > loadReturn.CurrentLimitAmpere =>
-                $"load `{load.Name}` may draw {current:G3} A of the {loadReturn.CurrentLimitAmpere:G3} A of rail `{loadReturn.Name}`",
-            _ => null,
-        };
-        return reason?.ToString(CultureInfo.InvariantCulture);
+            return Over("take", loadPower, load.PowerRatingWatt, "W it is rated for");
+        }
+
+        double current = OutputCurrentAmpere(state, loadReturn, load);
+        if (current > state.Allowed.CurrentAmpere)
+        {
+            return Over("draw", current, state.Allowed.CurrentAmpere, "A the output is allowed");
+        }
+
+        double power = OutputPowerWatt(state, loadReturn, load);
+        if (power > state.Allowed.PowerWatt)
+        {
+            return Over("draw", power, state.Allowed.PowerWatt, "W the output is allowed");
+        }
+
+        return loadReturn is not null && current > loadReturn.CurrentLimitAmpere
+            ? Over("draw", current, loadReturn.CurrentLimitAmpere, $"A that rail `{loadReturn.Name}` is limited to")
+            : null;
+
+        string Over(string verb, double value, double limit, string ofWhat) => string.Create(
+            CultureInfo.InvariantCulture,
+            $"load `{load.Name}` may {verb} {value:G3}, more than the {limit:G3} {ofWhat}");
     }
 
     private static double LowestOhm(Load load) => load.ResistanceOhm - load.ExpandedUncertaintyOhm;
