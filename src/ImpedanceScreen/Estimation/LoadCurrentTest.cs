@@ -1,5 +1,6 @@
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Planning;
+using ImpedanceScreen.Statistics;
 
 namespace ImpedanceScreen.Estimation;
 
@@ -9,6 +10,9 @@ namespace ImpedanceScreen.Estimation;
 /// </summary>
 internal static class LoadCurrentTest
 {
+    /// <summary>Probability of the interval of no change.</summary>
+    private const double Probability = 0.999;
+
     /// <summary>Finds what is not proved; null where all is.</summary>
     public static SourceFault? Find(ReadingSet set)
     {
@@ -58,7 +62,7 @@ internal static class LoadCurrentTest
 
     /// <summary>
     /// Whether a loaded mean lies below the first unloaded one, towards the return, by more than the expanded uncertainty
-    /// of the difference. For p = 0.999: a load that never came on is to be taken for one only once in two thousand.
+    /// of the difference: a load that never came on is taken for one only once in two thousand.
     /// </summary>
     public static bool Changes(ReadingSet set, LoadPointReadings read)
     {
@@ -66,8 +70,9 @@ internal static class LoadCurrentTest
         PointMean loaded = ReadingSet.Mean(read);
         double back = set.RailMean?.Volt ?? set.Job.LoadReturn?.VoltageVolt.Value ?? 0;
         ErrorDistribution error = DifferenceOf(set, unloaded, loaded);
-        double expanded = error.StandardUncertainty * error.CoverageFactor(0.999);
-        return (unloaded.Volt - loaded.Volt) * Math.Sign(unloaded.Volt - back) > expanded;
+        double change = (unloaded.Volt - loaded.Volt) * Math.Sign(unloaded.Volt - back);
+        return change > 0
+            && UpperTail.StudentTwoSided(change / error.StandardUncertainty, error.DegreesOfFreedom) < 1 - Probability;
     }
 
     /// <summary>Error of the difference of two means: noise and resolution; the offset cancels.</summary>

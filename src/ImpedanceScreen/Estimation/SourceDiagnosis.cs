@@ -29,6 +29,16 @@ internal static class SourceDiagnosis
     /// <summary>What the fit says.</summary>
     public static SourceFault? OfFit(ReadingSet set, in SourceFit fit, double rate)
     {
+        if (fit.Converged && IsStraight(set, fit, rate))
+        {
+            return null;
+        }
+
+        return LoadCurrentTest.FindBehindContact(set, others => FitsWithout(set, others, rate)) ?? NoStraightLine(fit);
+    }
+
+    private static SourceFault NoStraightLine(in SourceFit fit)
+    {
         if (!fit.Converged)
         {
             return new(
@@ -37,14 +47,9 @@ internal static class SourceDiagnosis
                 OfFixture: true);
         }
 
-        if (IsStraight(set, fit, rate))
-        {
-            return null;
-        }
-
         string chiSquared = fit.ChiSquared.ToString("0.#", CultureInfo.InvariantCulture);
         string degrees = fit.DegreesOfFreedom.ToString(CultureInfo.InvariantCulture);
-        return LoadCurrentTest.FindBehindContact(set, others => FitsWithout(set, others, rate)) ?? new(
+        return new(
             SourceFaultKind.Curved,
             $"curved: no straight line of voltage against current within the uncertainty (chi-squared {chiSquared} with "
             + $"{degrees} degrees of freedom); look at the output stage",
