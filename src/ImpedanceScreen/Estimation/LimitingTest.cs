@@ -25,7 +25,9 @@ internal static class LimitingTest
     /// <param name="rate">False-alarm rate of the test over all its looks.</param>
     public static Knee? Find(ReadingSet set, double rate)
     {
-        LoadPointReadings[] points = [set.Unloaded[0], .. set.Loaded];
+        // A load that never came on would make the next one look like a knee: only loads with a visible current count.
+        IEnumerable<LoadPointReadings> loaded = set.Loaded.Where(read => LoadCurrentTest.Changes(set, read));
+        LoadPointReadings[] points = [set.Unloaded[0], .. loaded];
         int looks = Math.Max(1, set.Job.Loads.Count - 1);
         for (int count = 3; count <= points.Length; count++)
         {

@@ -1,5 +1,6 @@
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Planning;
+using ImpedanceScreen.Statistics;
 
 namespace ImpedanceScreen.Estimation;
 
@@ -9,6 +10,9 @@ namespace ImpedanceScreen.Estimation;
 /// </summary>
 internal static class LoadCurrentTest
 {
+    /// <summary>Probability of the interval of no change.</summary>
+    private const double Probability = 0.999;
+
     /// <summary>Finds what is not proved; null where all is.</summary>
     public static SourceFault? Find(ReadingSet set)
     {
@@ -35,18 +39,40 @@ internal static class LoadCurrentTest
             : Fault($"load relay {List(silent)} did not close or joint open: no change from unloaded");
     }
 
-    private static bool IsProved(ReadingSet set, LoadPointReadings read)
+    /// <summary>
+    /// Where the whole does not fit: the loads that changed nothing, if without them all is well. Their contacts may read
+    /// closed; the load behind them, or its joint, is open.
+    /// </summary>
+    public static SourceFault? FindBehindContact(ReadingSet set, Func<LoadPointReadings[], bool> fits)
     {
-        if (set.Job.Output.LoadCurrentProof == LoadCurrentProof.ContactReadback && read.ContactProved == true)
+        LoadPointReadings[] changed = [.. set.Output.Where(read => read.Point.Load is null || Changes(set, read))];
+        bool some = changed.Length < set.Output.Length && changed.Length > set.Unloaded.Length;
+        if (!some || !fits(changed))
         {
-            return true;
+            return null;
         }
 
+        string names = List([.. set.Loaded.Except(changed).Select(Name)]);
+        return Fault($"load {names} changes nothing though the other loads do: load, branch or joint open");
+    }
+
+    private static bool IsProved(ReadingSet set, LoadPointReadings read) =>
+        (set.Job.Output.LoadCurrentProof == LoadCurrentProof.ContactReadback && read.ContactProved == true)
+        || Changes(set, read);
+
+    /// <summary>
+    /// Whether a loaded mean lies below the first unloaded one, towards the return, by more than the expanded uncertainty
+    /// of the difference: a load that never came on is taken for one only once in two thousand.
+    /// </summary>
+    public static bool Changes(ReadingSet set, LoadPointReadings read)
+    {
         PointMean unloaded = ReadingSet.Mean(set.Unloaded[0]);
         PointMean loaded = ReadingSet.Mean(read);
+        double back = set.RailMean?.Volt ?? set.Job.LoadReturn?.VoltageVolt.Value ?? 0;
         ErrorDistribution error = DifferenceOf(set, unloaded, loaded);
-        double expanded = error.StandardUncertainty * error.CoverageFactor(0.95);
-        return Math.Abs(loaded.Volt - unloaded.Volt) > expanded;
+        double change = (unloaded.Volt - loaded.Volt) * Math.Sign(unloaded.Volt - back);
+        return change > 0
+            && UpperTail.StudentTwoSided(change / error.StandardUncertainty, error.DegreesOfFreedom) < 1 - Probability;
     }
 
     /// <summary>Error of the difference of two means: noise and resolution; the offset cancels.</summary>
@@ -55,7 +81,7 @@ internal static class LoadCurrentTest
         MeterRange range = set.Job.Range;
         double noise = range.NoiseVolt * Math.Sqrt((1.0 / one.Count) + (1.0 / other.Count));
         double resolution = range.ResolutionVolt / Math.Sqrt(6);
-        return new(double.Hypot(noise, resolution), range.NoiseDegreesOfFreedom, 0);
+        return new(double.Hypot(noise, resolution), range.NoiseDegreesOfFreedom);
     }
 
     private static string Name(LoadPointReadings read) => read.Point.Load!.Name;

@@ -29,6 +29,16 @@ internal static class SourceDiagnosis
     /// <summary>What the fit says.</summary>
     public static SourceFault? OfFit(ReadingSet set, in SourceFit fit, double rate)
     {
+        if (fit.Converged && IsStraight(set, fit, rate))
+        {
+            return null;
+        }
+
+        return LoadCurrentTest.FindBehindContact(set, others => FitsWithout(set, others, rate)) ?? NoStraightLine(fit);
+    }
+
+    private static SourceFault NoStraightLine(in SourceFit fit)
+    {
         if (!fit.Converged)
         {
             return new(
@@ -37,16 +47,26 @@ internal static class SourceDiagnosis
                 OfFixture: true);
         }
 
-        int degrees = fit.DegreesOfFreedom;
-        double tail = degrees < 1
-            ? 1
-            : UpperTail.VarianceRatio(fit.ChiSquared / degrees, degrees, set.Job.Range.NoiseDegreesOfFreedom);
         string chiSquared = fit.ChiSquared.ToString("0.#", CultureInfo.InvariantCulture);
-        return tail >= rate ? null : new(
+        string degrees = fit.DegreesOfFreedom.ToString(CultureInfo.InvariantCulture);
+        return new(
             SourceFaultKind.Curved,
             $"curved: no straight line of voltage against current within the uncertainty (chi-squared {chiSquared} with "
-            + $"{degrees.ToString(CultureInfo.InvariantCulture)} degrees of freedom); look at the output stage",
+            + $"{degrees} degrees of freedom); look at the output stage",
             OfFixture: false);
+    }
+
+    private static bool IsStraight(ReadingSet set, in SourceFit fit, double rate)
+    {
+        int degrees = fit.DegreesOfFreedom;
+        return degrees < 1 || UpperTail.VarianceRatio(
+            fit.ChiSquared / degrees, degrees, set.Job.Range.NoiseDegreesOfFreedom) >= rate;
+    }
+
+    private static bool FitsWithout(ReadingSet set, LoadPointReadings[] others, double rate)
+    {
+        SourceFit fit = SourceFitter.Fit(set.Measure(others, null).Problem);
+        return fit is { Converged: true, DegreesOfFreedom: > 0 } && IsStraight(set, fit, rate);
     }
 
     private static SourceFault? ConditionFault(ReadingSet set)

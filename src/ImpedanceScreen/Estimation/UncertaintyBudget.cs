@@ -72,6 +72,7 @@ internal sealed class UncertaintyBudget
     {
         double total = 0;
         double widest = 0;
+        double second = 0;
         var groups = new Dictionary<string, (double Variance, double Degrees)>(StringComparer.Ordinal);
         foreach (Contribution part in Contributions)
         {
@@ -80,6 +81,7 @@ internal sealed class UncertaintyBudget
             total += variance;
             if (part.Input.Distribution == InputDistribution.Rectangular)
             {
+                second = Math.Max(second, Math.Min(widest, variance));
                 widest = Math.Max(widest, variance);
             }
 
@@ -91,12 +93,14 @@ internal sealed class UncertaintyBudget
         }
 
         // Welch-Satterthwaite (JCGM 100:2008, G.4) over sources, never over readings.
-        double rest = Math.Max(0, total - widest);
+        double rest = Math.Max(0, total - widest - second);
         double sum = groups.Values.Sum(group => group.Variance * group.Variance / group.Degrees);
         double degrees = sum > 0 ? rest * rest / sum : double.PositiveInfinity;
 
-        // Beyond a million the t distribution is the normal one to all digits recorded.
-        return new(Math.Sqrt(rest), degrees > 1e6 ? double.PositiveInfinity : degrees, Math.Sqrt(3 * widest));
+        // Beyond ten thousand the t distribution's factor is the normal one's within 0.01 %.
+        return new(
+            Math.Sqrt(rest), degrees > 1e4 ? double.PositiveInfinity : degrees, Math.Sqrt(3 * widest),
+            Math.Sqrt(3 * second));
     }
 
     /// <summary>

@@ -47,7 +47,7 @@ public static class FixedPlan
     private static PlanStep NextLoad(ReadingSet set, int testsPerBoard)
     {
         bool limits = LimitingTest.Find(set, DiagnosticAlarm.RatePerTest(testsPerBoard)) is not null;
-        if (set.ReadUnloadedAgain)
+        if (set.ReadUnloadedAgain || set.Job.Loads.Count == 0)
         {
             return new PlanStep.Stop(limits ? StopReason.Limiting : StopReason.PlanComplete);
         }
