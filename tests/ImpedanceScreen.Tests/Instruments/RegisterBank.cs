@@ -2,7 +2,9 @@ using ImpedanceScreen.Instruments.Modbus;
 
 namespace ImpedanceScreen.Tests.Instruments;
 
-/// <summary>A unit with 100 items of each kind. Every peer of these tests, in whatever language, starts with the same values.</summary>
+/// <summary>
+/// A unit with 100 items of each kind. Every peer of these tests, in whatever language, starts with the same values.
+/// </summary>
 internal sealed class RegisterBank
 {
     public const int Size = 100;

@@ -5,7 +5,9 @@ using Microsoft.Extensions.Logging.Abstractions;
 
 namespace ImpedanceScreen.Tests.Instruments;
 
-/// <summary>Links for tests: time-outs far longer than any test, so that only a fault that is made can end an exchange.</summary>
+/// <summary>
+/// Links for tests: time-outs far longer than any test, so that only a fault that is made can end an exchange.
+/// </summary>
 internal static class TestLinks
 {
     public static readonly TimeSpan Timeout = TimeSpan.FromSeconds(10);
