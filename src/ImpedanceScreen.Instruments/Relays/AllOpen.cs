@@ -102,7 +102,7 @@ internal sealed class AllOpen(
             for (int reads = 0; closed && reads < ContactReadsMost; reads++)
             {
                 await Deadline.In(time, unit.Unit.Unit.Release * timeScale).WaitAsync(cancellation);
-                IReadOnlyList<(Relay Relay, bool _, bool Contact)> contacts = await unit.ReadContactsAsync(cancellation);
+                var contacts = await unit.ReadContactsAsync(cancellation);
                 stuck = string.Join(", ", contacts.Where(read => read.Contact).Select(read => names[read.Relay]));
                 closed = stuck.Length > 0;
             }

@@ -30,6 +30,7 @@ public sealed class ScpiSession : IAsyncDisposable
     private readonly LiveLink live;
     private IByteChannel? channel;
     private Deadline? outstanding;
+    private int received;
 
     /// <summary>Makes a session; the link is opened by <see cref="CleanAsync"/>.</summary>
     public ScpiSession(Link link, IChannelFactory channels, TimeProvider time, ILogger log)
@@ -60,6 +61,7 @@ public sealed class ScpiSession : IAsyncDisposable
         try
         {
             channel = await live.GetAsync(cancellation);
+            received = 0;
             if (link is SerialLink)
             {
                 await DrainAsync(cancellation);
@@ -112,6 +114,7 @@ public sealed class ScpiSession : IAsyncDisposable
         return GuardAsync(
             async token =>
             {
+                received = 0;
                 channel.DiscardReceived();
                 await channel.WriteAsync(outgoing.AsMemory(0, length), token);
                 return hasAnswer ? await ReceiveLineAsync(token) : string.Empty;
@@ -146,24 +149,28 @@ public sealed class ScpiSession : IAsyncDisposable
         }
     }
 
+    // What arrived behind a line stays for ReadLineAsync; the next query drops it.
     private async Task<string> ReceiveLineAsync(CancellationToken cancellation)
     {
-        int received = 0;
-        while (received < LineLength)
+        int searched = 0;
+        int end;
+        while ((end = incoming.AsSpan(searched, received - searched).IndexOf(LineFeed)) < 0)
         {
-            int count = await channel!.ReadAsync(incoming.AsMemory(received), cancellation);
-            int end = incoming.AsSpan(received, count).IndexOf(LineFeed);
-            received += count;
-            if (end >= 0)
+            searched = received;
+            if (received == LineLength)
             {
-                // One query is outstanding, so nothing is due behind its answer; what there is must not answer the
-                // next.
-                int length = received - count + end;
-                return Encoding.Latin1.GetString(incoming, 0, length).TrimEnd('\r');
+                throw new ScpiException(
+                    ScpiFault.LineTooLong, $"An answer does not end within {LineLength} bytes.");
             }
+
+            received += await channel!.ReadAsync(incoming.AsMemory(received), cancellation);
         }
 
-        throw new ScpiException(ScpiFault.LineTooLong, $"An answer does not end within {LineLength} bytes.");
+        end += searched;
+        string line = Encoding.Latin1.GetString(incoming, 0, end).TrimEnd('\r');
+        received -= end + 1;
+        incoming.AsSpan(end + 1, received).CopyTo(incoming);
+        return line;
     }
 
     // The answer that is outstanding comes, or its time passes; then the line is read until it is quiet.
