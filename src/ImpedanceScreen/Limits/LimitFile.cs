@@ -10,6 +10,7 @@ namespace ImpedanceScreen.Limits;
 /// <param name="VoltageCeilingVolt">The highest DC voltage on the board, V; at most 60 (the program's own scope).</param>
 /// <param name="Undecided">What becomes of a board that is still undecided.</param>
 /// <param name="Outputs">The outputs, in the order in which they are screened.</param>
+/// <param name="VoltageCeilingVoltAcRms">The highest AC voltage on the board, V rms, at most 25; null where there is none.</param>
 public sealed record LimitFile(
     FileText Source,
     string Product,
@@ -17,7 +18,8 @@ public sealed record LimitFile(
     string SerialPattern,
     double VoltageCeilingVolt,
     UndecidedRule Undecided,
-    IReadOnlyList<OutputLimits> Outputs);
+    IReadOnlyList<OutputLimits> Outputs,
+    double? VoltageCeilingVoltAcRms = null);
 
 /// <summary>What becomes of a board that is undecided when no further reading helps.</summary>
 public enum UndecidedRule

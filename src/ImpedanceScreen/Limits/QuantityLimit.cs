@@ -20,7 +20,23 @@ public enum Quantity
 /// <param name="Rule">How uncertainty enters the decision.</param>
 /// <param name="RatedLoadOhm">The rated load of a droop limit, Ω; null for the other quantities.</param>
 public sealed record QuantityLimit(
-    Quantity Quantity, double? Min, double? Max, DecisionRule Rule, double? RatedLoadOhm);
+    Quantity Quantity, double? Min, double? Max, DecisionRule Rule, double? RatedLoadOhm)
+{
+    /// <summary>Whether a value lies within the limits, ends included; NaN does not.</summary>
+    public bool Holds(double value) => value >= (Min ?? double.MinValue) && value <= (Max ?? double.MaxValue);
+
+    /// <summary>The limited quantity of a source loaded to common, in the quantity's unit.</summary>
+    public double Of(NominalSource source)
+    {
+        ArgumentNullException.ThrowIfNull(source);
+        return Quantity switch
+        {
+            Quantity.SourceVoltage => source.SourceVoltageVolt,
+            Quantity.InternalResistance => source.InternalResistanceOhm,
+            _ => source.InternalResistanceOhm / (source.InternalResistanceOhm + (RatedLoadOhm ?? 0.0)),
+        };
+    }
+}
 
 /// <summary>How uncertainty enters a decision (JCGM 106, ISO 14253-1).</summary>
 /// <param name="GuardFactor">

@@ -1,0 +1,26 @@
+namespace ImpedanceScreen.Files;
+
+/// <summary>Collects the mistakes of one file.</summary>
+/// <param name="file">The file's name as the user gave it.</param>
+public sealed class MistakeList(string file)
+{
+    private readonly List<Mistake> mistakes = [];
+
+    /// <summary>How many there are so far.</summary>
+    public int Count => mistakes.Count;
+
+    /// <summary>Adds one.</summary>
+    /// <param name="mark">Where it stands.</param>
+    /// <param name="key">Path of the key; empty for the whole file.</param>
+    /// <param name="problem">What is wrong.</param>
+    /// <param name="cure">What to do about it.</param>
+    public void Add(Mark mark, string key, string problem, string cure) =>
+        mistakes.Add(new(file, mark, key, problem, cure));
+
+    /// <summary>Forgets all: a syntax error is reported alone, since what was read beside it may mean anything.</summary>
+    public void Clear() => mistakes.Clear();
+
+    /// <summary>All of them in the order of their places.</summary>
+    public IReadOnlyList<Mistake> InOrder() =>
+        [.. mistakes.OrderBy(mistake => mistake.Mark.Line).ThenBy(mistake => mistake.Mark.Column)];
+}

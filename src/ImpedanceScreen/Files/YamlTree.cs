@@ -1,0 +1,193 @@
+using System.Text;
+using YamlDotNet.Core;
+using YamlDotNet.Core.Events;
+
+namespace ImpedanceScreen.Files;
+
+/// <summary>
+/// Reads a file's text into a tree with places. Of YAML only the plain part is allowed: one document of mappings, lists
+/// and values. Anchors, aliases, tags and merge keys are refused, because a value that stands elsewhere cannot be
+/// reviewed where it is used.
+/// </summary>
+public sealed class YamlTree
+{
+    /// <summary>Largest file, bytes of UTF-8.</summary>
+    public const int LargestBytes = 1024 * 1024;
+
+    /// <summary>Deepest nesting of lists and mappings.</summary>
+    public const int DeepestNesting = 16;
+
+    private readonly Parser parser;
+    private readonly MistakeList mistakes;
+
+    private YamlTree(string text, MistakeList mistakes)
+    {
+        parser = new Parser(new StringReader(text));
+        this.mistakes = mistakes;
+    }
+
+    /// <summary>Reads the tree; null where the text gives none, then there is at least one mistake.</summary>
+    /// <param name="file">The text.</param>
+    /// <param name="mistakes">Takes every mistake found; a syntax error is the only one then.</param>
+    public static YamlMapping? Read(FileText file, MistakeList mistakes)
+    {
+        ArgumentNullException.ThrowIfNull(file);
+        ArgumentNullException.ThrowIfNull(mistakes);
+        if (Encoding.UTF8.GetByteCount(file.Text) > LargestBytes)
+        {
+            mistakes.Add(new(1, 1), "", "the file is larger than 1 MiB", "check that it is the file you mean");
+            return null;
+        }
+
+        try
+        {
+            return new YamlTree(file.Text, mistakes).ReadStream();
+        }
+        catch (YamlException error)
+        {
+            mistakes.Clear();
+            mistakes.Add(At(error.Start), "", "not readable as YAML: " + Sentence(error), "mend the line or the one above");
+            return null;
+        }
+    }
+
+    private YamlMapping? ReadStream()
+    {
+        Next<StreamStart>();
+        if (parser.MoveNext() && parser.Current is StreamEnd)
+        {
+            mistakes.Add(new(1, 1), "", "the file is empty", "give it at least `kind` and `format`");
+            return null;
+        }
+
+        parser.MoveNext();
+        YamlNode root = ReadNode(depth: 0);
+        Next<DocumentEnd>();
+        parser.MoveNext();
+        if (parser.Current is DocumentStart second)
+        {
+            mistakes.Add(At(second.Start), "", "a second document begins here", "keep one document in a file");
+        }
+
+        if (root is YamlMapping mapping)
+        {
+            return mapping;
+        }
+
+        mistakes.Add(root.Mark, "", "the file is not a list of `key: value` lines", "begin with `kind:` and `format:`");
+        return null;
+    }
+
+    // The parser stands on the first event of a node when this is called, and on its last when it returns.
+    private YamlNode ReadNode(int depth)
+    {
+        ParsingEvent first = parser.Current!;
+        Mark mark = At(first.Start);
+        if (depth > DeepestNesting)
+        {
+            throw new SyntaxErrorException(first.Start, first.End, $"nested deeper than {DeepestNesting} levels");
+        }
+
+        RefuseDecoration(first, mark);
+        switch (first)
+        {
+            case Scalar scalar:
+                return new YamlScalar(scalar.Value, scalar.Style == ScalarStyle.Plain, mark);
+            case SequenceStart:
+                return new YamlSequence(ReadItems(depth), mark);
+            case MappingStart:
+                return new YamlMapping(ReadEntries(depth), mark);
+            default:
+                mistakes.Add(mark, "", "an alias (`*`) is not allowed", "write the value out");
+                return new YamlRefused(mark);
+        }
+    }
+
+    private List<YamlNode> ReadItems(int depth)
+    {
+        List<YamlNode> items = [];
+        while (parser.MoveNext() && parser.Current is not SequenceEnd)
+        {
+            items.Add(ReadNode(depth + 1));
+        }
+
+        return items;
+    }
+
+    private List<YamlEntry> ReadEntries(int depth)
+    {
+        List<YamlEntry> entries = [];
+        Dictionary<string, Mark> seen = new(StringComparer.Ordinal);
+        while (parser.MoveNext() && parser.Current is not MappingEnd)
+        {
+            YamlNode key = ReadNode(depth + 1);
+            parser.MoveNext();
+            YamlNode value = ReadNode(depth + 1);
+            if (KeyOf(key) is not { } name)
+            {
+                continue;
+            }
+
+            if (seen.TryGetValue(name, out Mark earlier))
+            {
+                mistakes.Add(key.Mark, name, $"the key stands twice, first in line {earlier.Line}", "remove one of them");
+                continue;
+            }
+
+            seen.Add(name, key.Mark);
+            entries.Add(new(name, key.Mark, value));
+        }
+
+        return entries;
+    }
+
+    private string? KeyOf(YamlNode key)
+    {
+        switch (key)
+        {
+            case YamlScalar { Text: "<<", IsPlain: true }:
+                mistakes.Add(key.Mark, "<<", "a merge key is not allowed", "write the keys out");
+                return null;
+            case YamlScalar scalar:
+                return scalar.Text;
+            case YamlRefused:
+                return null;
+            default:
+                mistakes.Add(key.Mark, "", "a list or mapping cannot be a key", "write a key as plain text");
+                return null;
+        }
+    }
+
+    private void RefuseDecoration(ParsingEvent first, Mark mark)
+    {
+        if (first is not NodeEvent node)
+        {
+            return;
+        }
+
+        if (!node.Anchor.IsEmpty)
+        {
+            mistakes.Add(mark, "", $"an anchor (`&{node.Anchor}`) is not allowed", "write each value where it is used");
+        }
+
+        if (!node.Tag.IsEmpty)
+        {
+            mistakes.Add(mark, "", $"a tag (`{node.Tag}`) is not allowed", "remove it; each key has its own type");
+        }
+    }
+
+    private void Next<T>()
+        where T : ParsingEvent
+    {
+        if (!parser.MoveNext() || parser.Current is not T)
+        {
+            YamlDotNet.Core.Mark here = parser.Current?.Start ?? YamlDotNet.Core.Mark.Empty;
+            throw new SyntaxErrorException(here, here, "the document does not end where it should");
+        }
+    }
+
+    private static Mark At(YamlDotNet.Core.Mark mark) => new((int)Math.Max(1, mark.Line), (int)Math.Max(1, mark.Column));
+
+    // The parser's own message is a sentence about its grammar; its place is given by the mark.
+    private static string Sentence(YamlException error) => error.Message.TrimEnd('.', ' ');
+}
