@@ -114,7 +114,8 @@ internal sealed class RtuWire : IModbusWire
 
     private async ValueTask ReceiveEchoAsync(CancellationToken cancellation)
     {
-        await ReceiveAsync(0, outgoingLength, cancellation);
+        // Exactly the bytes that were sent: the answer may be right behind them.
+        await ReceiveAsync(incoming.AsMemory(0, outgoingLength), 0, outgoingLength, cancellation);
         if (!incoming.AsSpan(0, outgoingLength).SequenceEqual(outgoing.AsSpan(0, outgoingLength)))
         {
             throw new ModbusException(
@@ -128,7 +129,7 @@ internal sealed class RtuWire : IModbusWire
         int length = RtuFrame.LengthPending;
         while (length == RtuFrame.LengthPending)
         {
-            received = await ReceiveAsync(received, received + 1, cancellation);
+            received = await ReceiveAsync(incoming, received, received + 1, cancellation);
             length = RtuFrame.AnswerLength(incoming.AsSpan(0, received));
         }
 
@@ -144,19 +145,20 @@ internal sealed class RtuWire : IModbusWire
                 ModbusFault.WrongLength, $"The answer's frame is {length} bytes long where {answerLength} are due.");
         }
 
-        received = await ReceiveAsync(received, length, cancellation);
+        // Takes what there is: bytes beyond a frame are a fault and are noticed as one.
+        received = await ReceiveAsync(incoming, received, length, cancellation);
         return received == length
             ? incoming.AsMemory(0, length)
             : throw new ModbusException(
                 ModbusFault.WrongLength, $"{received} bytes arrived for an answer of {length}.");
     }
 
-    // Takes what there is, up to the whole buffer: bytes beyond a frame are a fault and are noticed as one.
-    private async ValueTask<int> ReceiveAsync(int received, int needed, CancellationToken cancellation)
+    private async ValueTask<int> ReceiveAsync(
+        Memory<byte> buffer, int received, int needed, CancellationToken cancellation)
     {
         while (received < needed)
         {
-            received += await channel!.ReadAsync(incoming.AsMemory(received), cancellation);
+            received += await channel!.ReadAsync(buffer[received..], cancellation);
         }
 
         return received;

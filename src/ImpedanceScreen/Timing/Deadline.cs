@@ -58,7 +58,8 @@ public readonly record struct Deadline
         {
             if (!real)
             {
-                await Task.Delay(left, time, cancellation);
+                // A delay drops fractions of a millisecond: less than one would not wait at all, for ever.
+                await Task.Delay(TimeSpan.FromMilliseconds(Math.Ceiling(left.TotalMilliseconds)), time, cancellation);
             }
             else if (left > LastStretch)
             {
