@@ -1,6 +1,5 @@
 using System.Runtime.InteropServices;
 using ImpedanceScreen.Fixtures;
-using ImpedanceScreen.SimulatedBench.Circuits;
 
 namespace ImpedanceScreen.SimulatedBench.Relays;
 
