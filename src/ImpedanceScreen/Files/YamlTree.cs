@@ -46,7 +46,9 @@ public sealed class YamlTree
         }
         catch (YamlException error)
         {
-            return tree.Unreadable(At(error.Start), error.Message.TrimEnd('.', ' '));
+            // A tab is found where the line above should have gone on; everything else where it begins.
+            bool tab = error.Message.Contains("tab character", StringComparison.Ordinal);
+            return tree.Unreadable(At(tab ? error.End : error.Start), error.Message.TrimEnd('.', ' '));
         }
         catch (Exception error) when (error is InvalidOperationException or ArgumentException)
         {

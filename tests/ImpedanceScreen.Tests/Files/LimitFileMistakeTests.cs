@@ -12,7 +12,7 @@ public sealed class LimitFileMistakeTests
     {
         // The text as a whole.
         { "undecided: retest", "undecided: [retest", 7, 12, "", "not readable as YAML" },
-        { "undecided: retest", "\tundecided: retest", 6, 20, "", "not readable as YAML" },
+        { "undecided: retest", "\tundecided: retest", 7, 1, "", "found a tab character" },
         { "settle_ms: 20", "settle_ms: 20\n        readings_per_load_point: 4\n---\nkind: limits\n#", 22, 1, "", "a second document begins" },
         { "outputs:", "outputs: &all", 8, 10, "", "an anchor (`&all`) is not allowed" },
         { "product: Probe", "product: !!str Probe", 3, 10, "", "a tag (`tag:yaml.org,2002:str`) is not allowed" },
