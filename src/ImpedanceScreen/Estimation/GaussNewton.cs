@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+
 namespace ImpedanceScreen.Estimation;
 
 /// <summary>
@@ -107,37 +109,46 @@ internal readonly ref struct GaussNewton
             objective += values[k] * values[k];
         }
 
-        int load = -1;
+        // Copies on the stack: the compiler cannot know that what is written below leaves the fields alone.
+        ReadOnlySpan<FitPoint> points = problem.Points;
+        ReadOnlySpan<FitLoad> loads = problem.Loads;
+        ReadOnlySpan<double> weight = weights;
+        Span<double> equation = row;
         double offset = returnTerm == 1 ? problem.OffsetUncertaintyVolt * values[0] : 0;
         double back = Return(offset);
-        for (int i = 0; i < weights.Length; i++)
+        double sourceVolt = SourceVolt;
+        double ohm = Ohm;
+        double meter = problem.MeterSiemens;
+        int load = -1;
+        double siemens = 0;
+        for (int i = 0; i < points.Length && i < weight.Length; i++)
         {
-            ref readonly FitPoint point = ref problem.Points[i];
+            FitPoint point = points[i];
             if (point.Load != load)
             {
                 load = point.Load;
+                siemens = 1 / LoadOhm(load, loads[load]);
                 double prior = -loadErrors[load];
                 objective += prior * prior;
                 BeginLoad(load, prior);
             }
 
-            var model = new SourceModel(SourceVolt, Ohm, back, LoadSiemens(load), problem.MeterSiemens);
+            var model = new SourceModel(sourceVolt, ohm, back, siemens, meter);
             if (!model.IsPhysical)
             {
                 return double.PositiveInfinity;
             }
 
-            double weight = weights[i];
-            double residual = (point.Volt - model.Volt - offset) * weight;
+            double residual = (point.Volt - model.Volt - offset) * weight[i];
             objective += residual * residual;
-            FillRow(model, load, weight);
+            FillRow(equation, model, load, weight[i]);
             if (load >= 0)
             {
-                Rotate(load, model.PerLoadOhm * problem.Loads[load].IndividualOhm * weight, ref residual);
+                Rotate(load, model.PerLoadOhm * loads[load].IndividualOhm * weight[i], equation, ref residual);
             }
 
-            Rows.AddSquare(matrix, row, size);
-            Rows.AddScaled(gradient, row, residual);
+            Rows.AddSquare(matrix, equation, size);
+            Rows.AddScaled(gradient, equation, residual);
         }
 
         return objective;
@@ -210,46 +221,51 @@ internal readonly ref struct GaussNewton
         return problem.ReturnVolt - shared + own;
     }
 
-    private double LoadSiemens(int load)
+    private double LoadOhm(int load, in FitLoad stated)
     {
-        if (load < 0)
-        {
-            return 0;
-        }
-
-        ref readonly FitLoad stated = ref problem.Loads[load];
         double ohm = stated.Ohm + (stated.IndividualOhm * loadErrors[load]);
         int count = problem.CommonCount;
         ReadOnlySpan<double> common = problem.CommonOhm.Slice(load * count, count);
-        for (int k = 0; k < common.Length; k++)
+        ReadOnlySpan<double> errors = values.Slice(firstLoadTerm, count);
+        for (int k = 0; k < common.Length && k < errors.Length; k++)
         {
-            ohm += common[k] * values[firstLoadTerm + k];
+            ohm += common[k] * errors[k];
         }
 
-        return 1 / ohm;
+        return ohm;
     }
 
-    private void FillRow(in SourceModel model, int load, double weight)
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private void FillRow(Span<double> equation, in SourceModel model, int load, double weight)
     {
         if (returnTerm == 1)
         {
             double shared = problem.ReturnSharesOffset ? model.PerReturnVolt : 0;
-            row[0] = problem.OffsetUncertaintyVolt * (1 - shared) * weight;
+            equation[0] = problem.OffsetUncertaintyVolt * (1 - shared) * weight;
         }
 
         if (firstLoadTerm > returnTerm)
         {
-            row[returnTerm] = problem.ReturnUncertaintyVolt * model.PerReturnVolt * weight;
+            equation[returnTerm] = problem.ReturnUncertaintyVolt * model.PerReturnVolt * weight;
         }
 
-        for (int k = 0; k < problem.CommonCount; k++)
+        int count = problem.CommonCount;
+        if (load < 0)
         {
-            double ohm = load < 0 ? 0 : problem.CommonOhm[(load * problem.CommonCount) + k];
-            row[firstLoadTerm + k] = ohm * model.PerLoadOhm * weight;
+            equation.Slice(firstLoadTerm, count).Clear();
+        }
+        else
+        {
+            ReadOnlySpan<double> common = problem.CommonOhm.Slice(load * count, count);
+            double perOhm = model.PerLoadOhm * weight;
+            for (int k = 0; k < common.Length; k++)
+            {
+                equation[firstLoadTerm + k] = common[k] * perOhm;
+            }
         }
 
-        row[size - 2] = model.PerSourceVolt * weight;
-        row[size - 1] = model.PerOhm * weight;
+        equation[size - 2] = model.PerSourceVolt * weight;
+        equation[size - 1] = model.PerOhm * weight;
     }
 
     private void BeginLoad(int load, double prior)
@@ -261,7 +277,8 @@ internal readonly ref struct GaussNewton
 
     // Takes a load's own error out of the row at hand by rotating it into the load's row: for the load's first reading
     // that is its effective variance, without the cancellation that a complement of sums would have.
-    private void Rotate(int load, double own, ref double residual)
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private void Rotate(int load, double own, Span<double> equation, ref double residual)
     {
         double diagonal = loadDiagonals[load];
         double length = Math.Sqrt((diagonal * diagonal) + (own * own));
@@ -269,7 +286,7 @@ internal readonly ref struct GaussNewton
         double cosine = diagonal * inverse;
         double sine = own * inverse;
         Span<double> kept = loadRows.Slice(load * width, width);
-        Rows.Rotate(kept, row, cosine, sine);
+        Rows.Rotate(kept, equation, cosine, sine);
         double pull = loadPulls[load];
         loadPulls[load] = (cosine * pull) + (sine * residual);
         residual = (cosine * residual) - (sine * pull);

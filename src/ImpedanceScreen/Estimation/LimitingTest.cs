@@ -29,23 +29,25 @@ internal static class LimitingTest
         IEnumerable<LoadPointReadings> loaded = set.Loaded.Where(read => LoadCurrentTest.Changes(set, read));
         LoadPointReadings[] points = [set.Unloaded[0], .. loaded];
         int looks = Math.Max(1, set.Job.Loads.Count - 1);
+        SourceFit line = points.Length < 3 ? default : SourceFitter.Fit(set.Measure(points[..2], null).Problem);
         for (int count = 3; count <= points.Length; count++)
         {
-            if (Look(set, points[..count], rate / looks) is { } knee)
+            StateMeasurement with = set.Measure(points[..count], null);
+            SourceFit all = SourceFitter.Fit(with.Problem);
+            if (Look(with, line, all, points[..count], rate / looks) is { } knee)
             {
                 return knee;
             }
+
+            line = all;
         }
 
         return null;
     }
 
-    private static Knee? Look(ReadingSet set, LoadPointReadings[] points, double rate)
+    private static Knee? Look(
+        StateMeasurement with, in SourceFit line, in SourceFit all, LoadPointReadings[] points, double rate)
     {
-        StateMeasurement before = set.Measure(points[..^1], null);
-        StateMeasurement with = set.Measure(points, null);
-        SourceFit line = SourceFitter.Fit(before.Problem);
-        SourceFit all = SourceFitter.Fit(with.Problem);
         Load load = points[^1].Point.Load!;
         double read = ReadingSet.Mean(points[^1]).Volt;
         double back = with.ReturnVolt;
@@ -62,14 +64,14 @@ internal static class LimitingTest
         // The meter's noise is itself an estimate, hence F rather than chi-squared; one-sided, hence half. A point that
         // admits no source at all together with the others is beyond any line.
         double rise = all.Converged ? Math.Max(0, all.ChiSquared - line.ChiSquared) : double.PositiveInfinity;
-        double tail = 0.5 * UpperTail.VarianceRatio(rise, 1, set.Job.Range.NoiseDegreesOfFreedom);
+        double tail = 0.5 * UpperTail.VarianceRatio(rise, 1, with.Job.Range.NoiseDegreesOfFreedom);
         if (!falls || tail >= rate)
         {
             return null;
         }
 
         PointMean last = ReadingSet.Mean(points[^2]);
-        double lastAmpere = (last.Volt - back) / before.Paths[before.LoadIndex(last.Load)].Ohm;
+        double lastAmpere = (last.Volt - back) / with.Paths[with.LoadIndex(last.Load)].Ohm;
         return new(load, read, expected, Math.Abs(lastAmpere), Math.Abs((read - back) / ohm));
     }
 }

@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
@@ -10,6 +11,7 @@ internal static class Rows
     public static int Padded(int length) => (length + 3) & ~3;
 
     /// <summary>target += factor * source; both have the same whole number of vectors.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static void AddScaled(Span<double> target, ReadOnlySpan<double> source, double factor)
     {
         if (source.Length != target.Length)
@@ -27,6 +29,7 @@ internal static class Rows
     }
 
     /// <summary>Rotates two rows: (kept, row) becomes (c kept + s row, c row - s kept).</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static void Rotate(Span<double> kept, Span<double> row, double cosine, double sine)
     {
         if (row.Length != kept.Length)
@@ -46,6 +49,7 @@ internal static class Rows
     }
 
     /// <summary>matrix += row rowᵀ, the first <paramref name="size"/> rows of it.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static void AddSquare(Span<double> matrix, ReadOnlySpan<double> row, int size)
     {
         if (matrix.Length < size * row.Length)

@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 
 namespace ImpedanceScreen.Estimation;
@@ -21,6 +22,7 @@ internal readonly struct SourceModel
     /// <param name="returnVolt">Voltage that the load returns to, V.</param>
     /// <param name="loadSiemens">Conductance of the load's path, S; 0 for unloaded.</param>
     /// <param name="meterSiemens">The meter's input conductance, S.</param>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public SourceModel(double sourceVolt, double ohm, double returnVolt, double loadSiemens, double meterSiemens)
     {
         resistance = ohm;

@@ -121,7 +121,7 @@ public sealed class DiagnosisTests
     public void Alarms_on_good_boards_keep_to_their_stated_rate()
     {
         // 0.1 % for each of the four tests; their sum is an upper bound for a board.
-        const int Boards = 5000;
+        const int Boards = 3000;
         const double Rate = 4 * DiagnosticAlarm.BoardRate;
         StateJob job = SourceBench.Job();
         int alarms = Enumerable.Range(0, Boards).Count(_ => StateEvaluation.Evaluate(
