@@ -5,5 +5,6 @@ internal static class FigureCommands
 {
     public static IReadOnlyList<IFigureCommand> All { get; } =
     [
+        new RepliesCommand(),
     ];
 }
