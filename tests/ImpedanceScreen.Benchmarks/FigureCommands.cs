@@ -6,5 +6,6 @@ internal static class FigureCommands
     public static IReadOnlyList<IFigureCommand> All { get; } =
     [
         new FitFigure(),
+        new RepliesCommand(),
     ];
 }
