@@ -1,5 +1,4 @@
 using System.CommandLine;
-using System.CommandLine.Parsing;
 using ImpedanceScreen.Station;
 using ImpedanceScreen.Station.Commands;
 

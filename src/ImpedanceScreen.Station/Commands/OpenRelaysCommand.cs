@@ -28,8 +28,8 @@ internal static class OpenRelaysCommand
         FixtureFile fixture = JobFiles.LoadFixture(path);
         using FixtureLock held = FixtureLock.Take(fixture);
         await using var bench = new FixtureBench(
-            fixture, new ChannelFactory(TimeProvider.System), TimeProvider.System, 1.0,
-            NullLogger<FixtureBench>.Instance);
+            fixture, new ChannelFactory(TimeProvider.System, NullLogger.Instance), TimeProvider.System, 1.0,
+            NullLogger.Instance);
         AllOpenOutcome outcome = await bench.OpenAllAsync();
         if (outcome.Confirmed)
         {

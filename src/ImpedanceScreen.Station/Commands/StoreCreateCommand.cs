@@ -1,5 +1,4 @@
 using System.CommandLine;
-using ImpedanceScreen.Recording;
 using ImpedanceScreen.Records;
 using ImpedanceScreen.Station.Hosting;
 
@@ -28,11 +27,11 @@ internal static class StoreCreateCommand
     {
         try
         {
-            ChainHead head = RecordStore.Create(path, station, ScreeningSession.ProgramVersion, TimeProvider.System);
-            Console.WriteLine($"{path}: made for station {station}; key {path}.key; head {head.Sequence}:{head.Link}");
+            RecordStore.Create(path, station, ScreeningSession.ProgramVersion, TimeProvider.System);
+            Console.WriteLine($"{path}: made for station {station}; its signing key is {path}.key");
             return ExitCode.Done;
         }
-        catch (StoreFaultException e)
+        catch (Exception e) when (e is IOException or UnauthorizedAccessException)
         {
             throw new NotBegunException(e.Message, e);
         }

@@ -37,9 +37,9 @@ internal static class ScreeningSession
         job = simulated is null ? job : job with { Fixture = simulated.Rewire(job.Fixture) };
         using FixtureLock held = FixtureLock.Take(job.Fixture);
         using var loggers = new Serilog.Extensions.Logging.SerilogLoggerFactory(log);
+        ILogger<FixtureBench> benchLog = loggers.CreateLogger<FixtureBench>();
         await using var bench = new FixtureBench(
-            job.Fixture, new ChannelFactory(TimeProvider.System), TimeProvider.System, request.TimeScale,
-            loggers.CreateLogger<FixtureBench>());
+            job.Fixture, new ChannelFactory(TimeProvider.System, benchLog), TimeProvider.System, request.TimeScale, benchLog);
 
         // Before anything else, the store included: a process that died may have left relays closed.
         AllOpenOutcome opened = await bench.OpenAllAsync();
@@ -98,7 +98,7 @@ internal static class ScreeningSession
         {
             return RecordStore.Open(path);
         }
-        catch (StoreFaultException e)
+        catch (Exception e) when (e is IOException or InvalidOperationException)
         {
             throw new NotBegunException(e.Message, e);
         }

@@ -1,6 +1,5 @@
+using System.Globalization;
 using ImpedanceScreen.Decisions;
-using ImpedanceScreen.Jobs;
-using ImpedanceScreen.Limits;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Lots;
 using Spectre.Console;
@@ -8,7 +7,7 @@ using Spectre.Console;
 namespace ImpedanceScreen.Station.Showing;
 
 /// <summary>One board: per output the estimate with its expanded uncertainty, limits, decision and cause.</summary>
-internal sealed class BoardView(ScreeningJob job) : IResultView
+internal sealed class BoardView : IResultView
 {
     public Disposition? LastDisposition { get; private set; }
 
@@ -16,7 +15,7 @@ internal sealed class BoardView(ScreeningJob job) : IResultView
     {
         LastDisposition = record.Disposition;
         AnsiConsole.MarkupLineInterpolated(
-            $"[bold]{record.Product}[/] revision {record.Revision}, serial [bold]{record.Serial}[/], attempt {record.Attempt}");
+            CultureInfo.InvariantCulture, $"[bold]{record.Product}[/] revision {record.Revision}, serial [bold]{record.Serial}[/], attempt {record.Attempt}");
         Table table = new Table().Border(TableBorder.Horizontal)
             .AddColumns("output", "quantity", "value ± U (95 %)", "limits", "guard band", "P(conforms)", "decision");
         foreach (StateResult state in record.States)
@@ -27,20 +26,23 @@ internal sealed class BoardView(ScreeningJob job) : IResultView
         AnsiConsole.Write(table);
         foreach (StateResult state in record.States.Where(state => state.Fault is not null))
         {
-            AnsiConsole.MarkupLineInterpolated($"{state.Output} {state.State}: [bold]{state.Fault!.Words}[/]");
+            AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"{state.Output} {state.State}: [bold]{state.Fault!.Words}[/]");
         }
 
         TimeSpent time = record.TimeSpent;
         AnsiConsole.MarkupLineInterpolated(
-            $"{record.EndedAt - record.StartedAt:s\\.ff} s: switching {time.SwitchingMs} ms, settling {time.SettlingMs} ms, integrating {time.IntegratingMs} ms, talking {time.TalkingMs} ms, other {time.OtherMs} ms");
-        AnsiConsole.MarkupLineInterpolated($"[bold]{Words(record.Disposition)}[/] {record.Cause}");
+            CultureInfo.InvariantCulture, $"{record.EndedAt - record.StartedAt:s\\.ff} s: switching {time.SwitchingMs} ms, settling {time.SettlingMs} ms, integrating {time.IntegratingMs} ms, talking {time.TalkingMs} ms, other {time.OtherMs} ms");
+        AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"[bold]{Words(record.Disposition)}[/] {record.Cause}");
     }
 
     public void End(LotEnd? end, TimeSpan elapsed)
     {
         if (end?.Kind != LotEndKind.Complete)
         {
-            AnsiConsole.MarkupLineInterpolated($"[bold]{EndWords.Of(end)}[/]");
+            AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"[bold]{EndWords.Of(end)}[/]");
         }
     }
 

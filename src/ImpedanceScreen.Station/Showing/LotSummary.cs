@@ -12,14 +12,16 @@ internal static class LotSummary
     public static void Write(LotTally tally, RunRequest request, LotEnd? end, TimeSpan elapsed)
     {
         AnsiConsole.WriteLine();
-        AnsiConsole.MarkupLineInterpolated($"[bold]lot {request.Lot}[/]: {EndWords.Of(end)}");
         AnsiConsole.MarkupLineInterpolated(
-            $"{tally.Screened} boards: {tally.Passed} pass, {tally.Failed} fail, {tally.Retest} retest; {tally.Aborted} attempts aborted");
+            CultureInfo.InvariantCulture, $"[bold]lot {request.Lot}[/]: {EndWords.Of(end)}");
+        AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"{tally.Screened} boards: {tally.Passed} pass, {tally.Failed} fail, {tally.Retest} retest; {tally.Aborted} attempts aborted");
         if (tally.Screened > 0)
         {
-            AnsiConsole.MarkupLineInterpolated($"yield {Ratio(100.0 * tally.Passed / tally.Screened, "0.0")} %");
             AnsiConsole.MarkupLineInterpolated(
-                $"median time a board {Ratio(tally.MedianSeconds, "0.00")} s, {Ratio(tally.MedianOverFloor, "0.000")} times the bench floor of declared waits and integration; {Ratio(elapsed.TotalSeconds, "0.0")} s in all");
+            CultureInfo.InvariantCulture, $"yield {Ratio(100.0 * tally.Passed / tally.Screened, "0.0")} %");
+            AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"median time a board {Ratio(tally.MedianSeconds, "0.00")} s, {Ratio(tally.MedianOverFloor, "0.000")} times the bench floor of declared waits and integration; {Ratio(elapsed.TotalSeconds, "0.0")} s in all");
         }
 
         if (tally.Causes.Any())
@@ -34,11 +36,14 @@ internal static class LotSummary
             AnsiConsole.Write(table);
         }
 
-        AnsiConsole.MarkupLineInterpolated($"records {request.StorePath}");
-        AnsiConsole.MarkupLineInterpolated($"log     {StationLog.PathFor(request.StorePath, request.LogFolder)}");
+        AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"records {request.StorePath}");
+        AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"log     {StationLog.PathFor(request.StorePath, request.LogFolder)}");
         if (end is not null)
         {
-            AnsiConsole.MarkupLineInterpolated($"head    {end.Head.Sequence}:{end.Head.Link}");
+            AnsiConsole.MarkupLineInterpolated(
+            CultureInfo.InvariantCulture, $"head    {end.Head.Sequence}:{end.Head.Link}");
         }
     }
 

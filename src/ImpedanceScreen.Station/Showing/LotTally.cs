@@ -1,6 +1,5 @@
 using ImpedanceScreen.Decisions;
 using ImpedanceScreen.Jobs;
-using ImpedanceScreen.Limits;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Attempts;
 

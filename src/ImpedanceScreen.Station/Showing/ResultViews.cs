@@ -16,7 +16,7 @@ internal static class ResultViews
 
         if (single)
         {
-            return new BoardView(job);
+            return new BoardView();
         }
 
         var tally = new LotTally(job, request.TimeScale);

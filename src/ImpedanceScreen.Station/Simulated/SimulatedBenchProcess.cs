@@ -45,19 +45,19 @@ internal sealed class SimulatedBenchProcess : IAsyncDisposable
         AddOptional(start, "--first-serial", serials.FirstLabel);
         AddOptional(start, "--boards", serials.Source.Count?.ToString(CultureInfo.InvariantCulture));
         AddOptional(start, "--log", simulation.BenchLogPath);
-        Process process = Process.Start(start)
+        Process started = Process.Start(start)
             ?? throw new NotBegunException($"the simulated bench did not start: {start.FileName}");
         try
         {
             using var limit = new CancellationTokenSource(TimeSpan.FromMilliseconds(StartLimitMs), TimeProvider.System);
             using var both = CancellationTokenSource.CreateLinkedTokenSource(cancellation, limit.Token);
-            string? line = await process.StandardOutput.ReadLineAsync(both.Token);
-            return new SimulatedBenchProcess(process, Addresses(line));
+            string? line = await started.StandardOutput.ReadLineAsync(both.Token);
+            return new SimulatedBenchProcess(started, Addresses(line));
         }
         catch (Exception e) when (e is JsonException or OperationCanceledException or NotBegunException)
         {
-            process.Kill();
-            process.Dispose();
+            started.Kill();
+            started.Dispose();
             cancellation.ThrowIfCancellationRequested();
             throw new NotBegunException("the simulated bench did not come up; its words stand above", e);
         }
@@ -74,10 +74,10 @@ internal sealed class SimulatedBenchProcess : IAsyncDisposable
             start.ArgumentList.Add(argument);
         }
 
-        using Process process = Process.Start(start)
+        using Process started = Process.Start(start)
             ?? throw new NotBegunException($"the simulated bench did not start: {start.FileName}");
-        await process.WaitForExitAsync(cancellation);
-        return process.ExitCode;
+        await started.WaitForExitAsync(cancellation);
+        return started.ExitCode;
     }
 
     /// <summary>The same fixture with the addresses that the simulated bench listens on.</summary>
