@@ -85,10 +85,10 @@ public sealed class MappingReader
     public TimeSpan Duration(string key, NumberRange range)
     {
         ArgumentNullException.ThrowIfNull(key);
-        double milliseconds = (key.EndsWith("_ms", StringComparison.Ordinal), key.EndsWith("_s", StringComparison.Ordinal)) switch
+        double milliseconds = key switch
         {
-            (true, _) => 1.0,
-            (_, true) => 1000.0,
+            _ when key.EndsWith("_ms", StringComparison.Ordinal) => 1.0,
+            _ when key.EndsWith("_s", StringComparison.Ordinal) => 1000.0,
             _ => throw new ArgumentException("A duration's key ends in _ms or _s.", nameof(key)),
         };
         double value = Number(key, range);
@@ -163,7 +163,8 @@ public sealed class MappingReader
         return Items<string>(key, fewest, (item, path) =>
         {
             string problem = "is not a single text";
-            if (item is YamlScalar { IsMissing: false } scalar && ScalarParser.Text(scalar, out string text, out problem))
+            if (item is YamlScalar { IsMissing: false } scalar
+                && ScalarParser.Text(scalar, out string text, out problem))
             {
                 if (seen.Add(text))
                 {
@@ -199,7 +200,8 @@ public sealed class MappingReader
         missing.ForEach(key => mistakes.Add(mapping.Mark, PathOf(key), "the key is missing", "add it"));
     }
 
-    private const string NumberCure = "write a decimal number with a point, as 0.25 or 1.5e-3, without unit or separators";
+    private const string NumberCure =
+        "write a decimal number with a point, as 0.25 or 1.5e-3, without unit or separators";
 
     private string PathOf(string key) => (Path.Length, key.Length) switch
     {

@@ -17,7 +17,7 @@ public sealed class MistakeList(string file)
     public void Add(Mark mark, string key, string problem, string cure) =>
         mistakes.Add(new(file, mark, key, problem, cure));
 
-    /// <summary>Forgets all: a syntax error is reported alone, since what was read beside it may mean anything.</summary>
+    /// <summary>Forgets all: beside a syntax error, what was read before may mean anything.</summary>
     public void Clear() => mistakes.Clear();
 
     /// <summary>All of them in the order of their places.</summary>
