@@ -239,7 +239,13 @@ public sealed class MappingReader
     {
         if (IsPresent(key))
         {
-            return mapping.Find(key)!.Value;
+            YamlNode value = mapping.Find(key)!.Value;
+            if (value is YamlRefused)
+            {
+                mistakes.LeaveUnread();
+            }
+
+            return value;
         }
 
         if (required && mapping.Find(key) is not null)
@@ -277,9 +283,9 @@ public sealed class MappingReader
         YamlNode? node = Value(key, required);
         if (node is YamlMapping nested)
         {
-            int before = mistakes.Count;
+            int before = mistakes.Doubts;
             T value = Read(nested, mapping.Find(key)!.KeyMark, PathOf(key), read);
-            return mistakes.Count == before ? Known(key, value) : value;
+            return mistakes.Doubts == before ? Known(key, value) : value;
         }
 
         if (node is not (null or YamlRefused))
@@ -311,7 +317,7 @@ public sealed class MappingReader
             return [];
         }
 
-        int before = mistakes.Count;
+        int before = mistakes.Doubts;
         List<T> items = [];
         for (int i = 0; i < sequence.Items.Count; i++)
         {
@@ -323,12 +329,16 @@ public sealed class MappingReader
             Mistake(key, $"holds {sequence.Items.Count} where at least {fewest} are needed", "add what is missing");
         }
 
-        return mistakes.Count == before ? Known(key, items) : items;
+        return mistakes.Doubts == before ? Known(key, items) : items;
     }
 
     private void Report(YamlNode item, string path, string problem, string cure)
     {
-        if (item is not YamlRefused)
+        if (item is YamlRefused)
+        {
+            mistakes.LeaveUnread();
+        }
+        else
         {
             mistakes.Add(item.Mark, path, problem, cure);
         }

@@ -84,6 +84,19 @@ public sealed class ReadingTests
         Assert.Equal("links[0].name", mistake.Key);
     }
 
+    [Theory]
+    [InlineData("relay: {unit: a, coil: 0, contact_input: 0}", "relay: *gone", 25, 16)]
+    [InlineData("relay: {unit: a, coil: 0, contact_input: 0}", "relay: {unit: *gone, coil: 0}", 25, 23)]
+    [InlineData("interlock: {unit: b, input: 1}", "interlock: *gone", 96, 14)]
+    [InlineData("links:\n", "links:\n  - *gone\n", 6, 5)]
+    public void An_alias_is_reported_once_and_what_it_stood_for_is_not_guessed(
+        string find, string replace, int line, int column)
+    {
+        Mistake mistake = Assert.Single(FixtureFileBinder.Bind(SmallFiles.Fixture(find, replace)).Mistakes);
+        Assert.Equal(new Mark(line, column), mistake.Mark);
+        Assert.Contains("an alias", mistake.Problem, StringComparison.Ordinal);
+    }
+
     [Fact]
     public void A_comma_culture_changes_neither_values_nor_messages()
     {
