@@ -1,6 +1,6 @@
 namespace ImpedanceScreen.Files;
 
-/// <summary>Binds a file of a kind: reads its tree, checks <c>kind</c> and <c>format</c>, collects all mistakes.</summary>
+/// <summary>Binds files: reads the tree, checks <c>kind</c> and <c>format</c>, collects all mistakes.</summary>
 public static class FileBinder
 {
     /// <summary>The only format so far.</summary>
@@ -10,7 +10,7 @@ public static class FileBinder
     /// <typeparam name="T">What it is bound to.</typeparam>
     /// <param name="file">The text.</param>
     /// <param name="kind">The word that <c>kind</c> must be, as <c>limits</c>.</param>
-    /// <param name="bind">Reads the keys beside <c>kind</c> and <c>format</c>; its value counts only without mistakes.</param>
+    /// <param name="bind">Reads the other keys; its value counts only without mistakes.</param>
     public static Checked<T> Bind<T>(FileText file, string kind, Func<MappingReader, T> bind)
         where T : class
     {
@@ -27,7 +27,8 @@ public static class FileBinder
         if (reader.Bound("kind") && written != kind)
         {
             // Every other key would be reported too: that would bury the one thing that is wrong.
-            reader.Mistake("kind", $"the file is of kind `{ScalarParser.Shorten(written)}`, not `{kind}`", "name the right file");
+            reader.Mistake(
+                "kind", $"the file is of kind `{ScalarParser.Shorten(written)}`, not `{kind}`", "name the right file");
             return Checked<T>.Bad(mistakes.InOrder());
         }
 

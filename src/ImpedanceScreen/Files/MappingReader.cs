@@ -85,10 +85,10 @@ public sealed class MappingReader
     public TimeSpan Duration(string key, NumberRange range)
     {
         ArgumentNullException.ThrowIfNull(key);
-        double milliseconds = (key.EndsWith("_ms", StringComparison.Ordinal), key.EndsWith("_s", StringComparison.Ordinal)) switch
+        double milliseconds = key switch
         {
-            (true, _) => 1.0,
-            (_, true) => 1000.0,
+            _ when key.EndsWith("_ms", StringComparison.Ordinal) => 1.0,
+            _ when key.EndsWith("_s", StringComparison.Ordinal) => 1000.0,
             _ => throw new ArgumentException("A duration's key ends in _ms or _s.", nameof(key)),
         };
         double value = Number(key, range);
@@ -163,7 +163,8 @@ public sealed class MappingReader
         return Items<string>(key, fewest, (item, path) =>
         {
             string problem = "is not a single text";
-            if (item is YamlScalar { IsMissing: false } scalar && ScalarParser.Text(scalar, out string text, out problem))
+            if (item is YamlScalar { IsMissing: false } scalar
+                && ScalarParser.Text(scalar, out string text, out problem))
             {
                 if (seen.Add(text))
                 {
@@ -199,7 +200,8 @@ public sealed class MappingReader
         missing.ForEach(key => mistakes.Add(mapping.Mark, PathOf(key), "the key is missing", "add it"));
     }
 
-    private const string NumberCure = "write a decimal number with a point, as 0.25 or 1.5e-3, without unit or separators";
+    private const string NumberCure =
+        "write a decimal number with a point, as 0.25 or 1.5e-3, without unit or separators";
 
     private string PathOf(string key) => (Path.Length, key.Length) switch
     {
@@ -237,7 +239,13 @@ public sealed class MappingReader
     {
         if (IsPresent(key))
         {
-            return mapping.Find(key)!.Value;
+            YamlNode value = mapping.Find(key)!.Value;
+            if (value is YamlRefused)
+            {
+                mistakes.LeaveUnread();
+            }
+
+            return value;
         }
 
         if (required && mapping.Find(key) is not null)
@@ -275,9 +283,9 @@ public sealed class MappingReader
         YamlNode? node = Value(key, required);
         if (node is YamlMapping nested)
         {
-            int before = mistakes.Count;
+            int before = mistakes.Doubts;
             T value = Read(nested, mapping.Find(key)!.KeyMark, PathOf(key), read);
-            return mistakes.Count == before ? Known(key, value) : value;
+            return mistakes.Doubts == before ? Known(key, value) : value;
         }
 
         if (node is not (null or YamlRefused))
@@ -309,7 +317,7 @@ public sealed class MappingReader
             return [];
         }
 
-        int before = mistakes.Count;
+        int before = mistakes.Doubts;
         List<T> items = [];
         for (int i = 0; i < sequence.Items.Count; i++)
         {
@@ -321,12 +329,16 @@ public sealed class MappingReader
             Mistake(key, $"holds {sequence.Items.Count} where at least {fewest} are needed", "add what is missing");
         }
 
-        return mistakes.Count == before ? Known(key, items) : items;
+        return mistakes.Doubts == before ? Known(key, items) : items;
     }
 
     private void Report(YamlNode item, string path, string problem, string cure)
     {
-        if (item is not YamlRefused)
+        if (item is YamlRefused)
+        {
+            mistakes.LeaveUnread();
+        }
+        else
         {
             mistakes.Add(item.Mark, path, problem, cure);
         }

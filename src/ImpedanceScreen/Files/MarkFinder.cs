@@ -9,7 +9,7 @@ namespace ImpedanceScreen.Files;
 public static class MarkFinder
 {
     /// <summary>
-    /// The place of a key, or of the nearest thing above it that is there; line 1, column 1 where the text gives no tree.
+    /// The place of a key, or of the nearest thing above it that is there; line 1, column 1 where there is no tree.
     /// </summary>
     /// <param name="file">The text.</param>
     /// <param name="path">Path of the key, as <c>outputs[2].states[0].allowed.current_a</c>.</param>

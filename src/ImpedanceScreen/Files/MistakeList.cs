@@ -5,9 +5,16 @@ namespace ImpedanceScreen.Files;
 public sealed class MistakeList(string file)
 {
     private readonly List<Mistake> mistakes = [];
+    private int leftUnread;
 
     /// <summary>How many there are so far.</summary>
     public int Count => mistakes.Count;
+
+    /// <summary>
+    /// Grows with each mistake, and with each value that was left unread because its mistake had been noted earlier:
+    /// what was read while this stood still was read well.
+    /// </summary>
+    internal int Doubts => mistakes.Count + leftUnread;
 
     /// <summary>Adds one.</summary>
     /// <param name="mark">Where it stands.</param>
@@ -17,8 +24,11 @@ public sealed class MistakeList(string file)
     public void Add(Mark mark, string key, string problem, string cure) =>
         mistakes.Add(new(file, mark, key, problem, cure));
 
-    /// <summary>Forgets all: a syntax error is reported alone, since what was read beside it may mean anything.</summary>
+    /// <summary>Forgets all: beside a syntax error, what was read before may mean anything.</summary>
     public void Clear() => mistakes.Clear();
+
+    /// <summary>A value is left unread whose mistake is in the list already.</summary>
+    internal void LeaveUnread() => leftUnread++;
 
     /// <summary>All of them in the order of their places.</summary>
     public IReadOnlyList<Mistake> InOrder() =>

@@ -52,8 +52,13 @@ public sealed class NameTable(string what)
             return;
         }
 
-        foreach ((MappingReader reader, string key, string name) in references.Where(r => !declared.ContainsKey(r.Name)))
+        foreach ((MappingReader reader, string key, string name) in references)
         {
+            if (declared.ContainsKey(name))
+            {
+                continue;
+            }
+
             reader.Mistake(key, $"there is no {what} `{ScalarParser.Shorten(name)}`", Cure(name, declared.Keys));
         }
     }

@@ -144,7 +144,8 @@ public sealed class YamlTree
 
             if (seen.TryGetValue(name, out Mark earlier))
             {
-                mistakes.Add(key.Mark, name, $"the key stands twice, first in line {earlier.Line}", "remove one of them");
+                mistakes.Add(
+                    key.Mark, name, $"the key stands twice, first in line {earlier.Line}", "remove one of them");
                 continue;
             }
 
@@ -200,5 +201,6 @@ public sealed class YamlTree
         }
     }
 
-    private static Mark At(YamlDotNet.Core.Mark mark) => new((int)Math.Max(1, mark.Line), (int)Math.Max(1, mark.Column));
+    private static Mark At(YamlDotNet.Core.Mark mark) =>
+        new((int)Math.Max(1, mark.Line), (int)Math.Max(1, mark.Column));
 }

@@ -19,7 +19,8 @@ public static class Calibration
         [
             .. fixture.LoadBanks.SelectMany(bank => bank.Loads)
                 .Select(load => new OverdueCalibration(load.Name, load.Certificate, load.DueOn))
-                .Concat(fixture.Meters.Select(meter => new OverdueCalibration(meter.Name, meter.Certificate, meter.DueOn)))
+                .Concat(fixture.Meters.Select(
+                    meter => new OverdueCalibration(meter.Name, meter.Certificate, meter.DueOn)))
                 .Where(item => item.DueOn < today),
         ];
     }

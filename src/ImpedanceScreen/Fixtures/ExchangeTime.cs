@@ -32,10 +32,10 @@ internal sealed class ExchangeTime(Link link, TimeSpan longestAnswer)
             return longestAnswer;
         }
 
+        // One character time is not a whole number of ticks: it is multiplied before it is rounded.
+        double characterSeconds = (double)serial.BitsPerCharacter / serial.BaudRate;
+        double silenceSeconds = serial.BaudRate > 19_200 ? 1.75e-3 : 3.5 * characterSeconds;
         int characters = requestLength + answerLength + (2 * AddressAndCrc);
-        TimeSpan silence = serial.BaudRate > 19_200
-            ? TimeSpan.FromMilliseconds(1.75)
-            : serial.CharacterTime * 3.5;
-        return longestAnswer + (serial.CharacterTime * characters) + (silence * 2);
+        return longestAnswer + TimeSpan.FromSeconds((characters * characterSeconds) + (2.0 * silenceSeconds));
     }
 }

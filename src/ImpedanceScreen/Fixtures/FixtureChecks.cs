@@ -9,7 +9,9 @@ internal static class FixtureChecks
     {
         CheckGroups(reader, fixture);
         CheckReturns(reader, fixture);
-        if (names.InputsReader is { } inputs && reader.Bound("links", "relay_units") && inputs.Bound("interlock", "poll_ms"))
+        if (names.InputsReader is { } inputs
+            && reader.Bound("links", "relay_units")
+            && inputs.Bound("interlock", "poll_ms"))
         {
             CheckInterlock(inputs, fixture, names);
         }
@@ -76,7 +78,7 @@ internal static class FixtureChecks
         {
             inputs.Mistake(
                 "poll_ms", $"a broken interlock may open the relays as late as {reaction}",
-                "at most 100 ms: shorten poll_ms or the units' longest_answer_ms, raise baud, or use fewer relay units");
+                "at most 100 ms: shorten poll_ms or longest_answer_ms, raise baud, or use fewer relay units");
         }
     }
 }

@@ -30,14 +30,16 @@ public sealed record InterlockReaction(TimeSpan Poll, TimeSpan Waiting, TimeSpan
             fixture.RelayUnits,
             fixture.Inputs,
             relays.Select(relay => (relay.Unit, (int)relay.Coil)),
-            relays.Where(relay => relay.ContactInput is not null).Select(relay => (relay.Unit, (int)relay.ContactInput!))
+            relays.Where(relay => relay.ContactInput is not null)
+                .Select(relay => (relay.Unit, (int)relay.ContactInput!))
                 .Concat(points.OfType<InputPoint>().Select(point => (point.Unit, (int)point.Address))))!;
     }
 
     /// <summary>The parts in milliseconds, for a person.</summary>
     public override string ToString() => string.Create(
         CultureInfo.InvariantCulture,
-        $"{Ms(Total)} ms (poll period {Ms(Poll)} + exchange under way {Ms(Waiting)} + reading inputs {Ms(Reading)} + opening all {Ms(AllOpen)})");
+        $"{Ms(Total)} ms (poll period {Ms(Poll)} + exchange under way {Ms(Waiting)} "
+        + $"+ reading inputs {Ms(Reading)} + opening all {Ms(AllOpen)})");
 
     /// <summary>The time from the parts of a file; null where a part is missing.</summary>
     internal static InterlockReaction? Of(
@@ -65,7 +67,8 @@ public sealed record InterlockReaction(TimeSpan Poll, TimeSpan Waiting, TimeSpan
                 (time.WriteCoils(coilSpan), time.ReadBits(coilSpan), time.ReadBits(inputSpan));
             waiting = Max(waiting, Max(write, Max(readBack, read)));
             allOpen += write + readBack;
-            reading += unit.Name == inputs.Interlock.Unit || unit.Name == inputs.BoardPresent?.Unit ? read : TimeSpan.Zero;
+            bool polled = unit.Name == inputs.Interlock.Unit || unit.Name == inputs.BoardPresent?.Unit;
+            reading += polled ? read : TimeSpan.Zero;
         }
 
         return new(inputs.Poll, waiting, reading, allOpen);

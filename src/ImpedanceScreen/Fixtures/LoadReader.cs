@@ -79,7 +79,8 @@ internal static class LoadReader
             && load.ExpandedUncertaintyOhm >= load.ResistanceOhm)
         {
             reader.Mistake(
-                "expanded_uncertainty_ohm", "as large as the resistance itself", "give it in ohm, not in percent or ppm");
+                "expanded_uncertainty_ohm", "as large as the resistance itself",
+                "give it in ohm, not in percent or ppm");
         }
 
         if (reader.Bound("common_standard_uncertainty_ohm", "expanded_uncertainty_ohm", "coverage_factor")

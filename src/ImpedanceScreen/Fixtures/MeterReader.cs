@@ -50,7 +50,8 @@ internal static class MeterReader
         {
             if (meter.Ranges[i].FullScaleVolt <= meter.Ranges[i - 1].FullScaleVolt)
             {
-                reader.Mistake("ranges", $"range {i} is not above the one before it", "list the ranges in ascending order");
+                reader.Mistake(
+                    "ranges", $"range {i} is not above the one before it", "list the ranges in ascending order");
             }
         }
     }

@@ -47,7 +47,8 @@ public static class JobBinder
             mistakes.AtFixture("board_supply.voltage_v", problem, cure);
         }
 
-        HashSet<string> used = [.. files.Limits.Outputs.SelectMany(o => o.States).Select(s => s.LoadReturn).OfType<string>()];
+        IEnumerable<DriveState> states = files.Limits.Outputs.SelectMany(output => output.States);
+        HashSet<string> used = [.. states.Select(state => state.LoadReturn).OfType<string>()];
         for (int i = 0; i < files.Fixture.LoadReturns.Count; i++)
         {
             LoadReturn rail = files.Fixture.LoadReturns[i];

@@ -13,8 +13,8 @@ public static class LoadProof
     public const double ProvingFactor = 5.0;
 
     /// <summary>
-    /// Change from unloaded to a load of a source with the nominal values, V, without sign. In two-wire sensing the lead
-    /// changes too: its drop counts.
+    /// Change from unloaded to a load of a source with the nominal values, V, without sign. In two-wire sensing the
+    /// lead's drop is part of it.
     /// </summary>
     public static double NominalChangeVolt(StateJob state, Load load)
     {

@@ -40,8 +40,8 @@ public static class SafeLoading
         return new(all.Min(), all.Max());
     }
 
-    /// <summary>Largest power in a load, W: an internal resistance of zero at the voltage farthest from the return.</summary>
-    /// <param name="load">The load; its resistance counts at the lower end of its uncertainty, its branch not at all.</param>
+    /// <summary>Largest power in a load, W: no internal resistance, and the voltage farthest from the return.</summary>
+    /// <param name="load">The load, at the lower end of its uncertainty and without its branch.</param>
     /// <param name="presentVolt">Every voltage that can be present, V.</param>
     /// <param name="loadReturn">Where the load returns to; null for common.</param>
     public static double LoadPowerWatt(Load load, Window presentVolt, LoadReturn? loadReturn)
@@ -62,7 +62,9 @@ public static class SafeLoading
         return LargestDifference(state.UnloadedWindowVolt, ReturnVolt(loadReturn)) / LowestOhm(load);
     }
 
-    /// <summary>Largest power at the output's terminals, delivered or taken in, W, whatever its internal resistance.</summary>
+    /// <summary>
+    /// Largest power at the output's terminals, delivered or taken in, W, whatever its internal resistance.
+    /// </summary>
     public static double OutputPowerWatt(DriveState state, LoadReturn? loadReturn, Load load)
     {
         ArgumentNullException.ThrowIfNull(state);
@@ -84,7 +86,7 @@ public static class SafeLoading
         return largest / LowestOhm(load);
     }
 
-    /// <summary>The voltages at which a load may return, V: the rail within three standard uncertainties, or zero.</summary>
+    /// <summary>Where a load may return to, V: the rail within three standard uncertainties, or zero.</summary>
     public static Window ReturnVolt(LoadReturn? loadReturn)
     {
         if (loadReturn is null)

@@ -27,7 +27,7 @@ internal static class StateChecks
         }
     }
 
-    /// <summary>The plan's time under load against the allowed dwell; exchanges with the instruments come on top.</summary>
+    /// <summary>The plan's time under load against the allowed dwell; exchanges come on top of it.</summary>
     internal static void CheckDwell(StateJob job, FixtureFile fixture, JobMistakes mistakes)
     {
         TimeSpan reading = job.Meter.Integration * job.State.ReadingsPerLoadPoint;
@@ -57,7 +57,7 @@ internal static class StateChecks
             {
                 mistakes.AtState(
                     "limits.droop_percent.rated_load_ohm",
-                    Invariant($"heavier than the heaviest load of the plan, `{heaviest.Name}` of {heaviest.ResistanceOhm:G6} ohm"),
+                    Invariant($"heavier than any load of the plan (`{heaviest.Name}`: {heaviest.ResistanceOhm:G6} ohm)"),
                     "add a load near the rated load: nothing is extrapolated");
             }
         }
@@ -76,7 +76,7 @@ internal static class StateChecks
         }
 
         string seen = Invariant(
-            $"the heaviest load changes a good output by {change * 1e6:G3} uV only (standard uncertainty {uncertainty * 1e6:G3} uV)");
+            $"the heaviest load changes a good output by {change * 1e6:G3} uV, known to {uncertainty * 1e6:G3} uV");
         const string cure = "wire contact readback on the loads, take a heavier load or more readings";
         QuantityLimit? satisfied = job.State.Limits.FirstOrDefault(LoadProof.IsSatisfiedByZeroChange);
         if (satisfied is null)

@@ -67,7 +67,8 @@ internal static class StateJobBinder
         List<Load> loads = [];
         for (int i = 0; i < state.Loads.Count; i++)
         {
-            if (Find(bank.Loads, load => load.Name, state.Loads[i], "load", mistakes.AtState, $"loads[{i}]") is { } load)
+            string name = state.Loads[i];
+            if (Find(bank.Loads, load => load.Name, name, "load", mistakes.AtState, $"loads[{i}]") is { } load)
             {
                 loads.Add(load);
             }

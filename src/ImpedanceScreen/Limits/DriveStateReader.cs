@@ -106,7 +106,7 @@ internal static class DriveStateReader
         if (droop && (nominal.SourceVoltageVolt == 0.0 || reader.Holds("load_return")))
         {
             reader.Mistake(
-                "limits", "`droop_percent` is a fraction of the source voltage, loaded to common: it has no meaning here",
+                "limits", "`droop_percent` is a part of the source voltage, loaded to common: it has no meaning here",
                 "limit the internal resistance instead");
         }
     }

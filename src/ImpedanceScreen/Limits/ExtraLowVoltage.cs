@@ -2,7 +2,7 @@ using ImpedanceScreen.Files;
 
 namespace ImpedanceScreen.Limits;
 
-/// <summary>The program's own scope: extra-low voltage only. It is not a statement that anything below is safe.</summary>
+/// <summary>The program's own scope: extra-low voltage only. No statement that anything below is safe.</summary>
 public static class ExtraLowVoltage
 {
     /// <summary>Highest DC voltage, V.</summary>

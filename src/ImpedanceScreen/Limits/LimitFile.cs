@@ -10,7 +10,7 @@ namespace ImpedanceScreen.Limits;
 /// <param name="VoltageCeilingVolt">The highest DC voltage on the board, V; at most 60 (the program's own scope).</param>
 /// <param name="Undecided">What becomes of a board that is still undecided.</param>
 /// <param name="Outputs">The outputs, in the order in which they are screened.</param>
-/// <param name="VoltageCeilingVoltAcRms">The highest AC voltage on the board, V rms, at most 25; null where there is none.</param>
+/// <param name="VoltageCeilingVoltAcRms">Highest AC voltage on the board, V rms, at most 25; null for none.</param>
 public sealed record LimitFile(
     FileText Source,
     string Product,

@@ -57,7 +57,8 @@ public static class LimitFileBinder
         catch (NotSupportedException)
         {
             reader.Mistake(
-                "serial_pattern", "uses a construct that can take for ever (look-around, back-reference, atomic group)",
+                "serial_pattern",
+                "can take for ever (look-around, back-reference, atomic group or a huge repetition)",
                 "write the pattern without it");
         }
 

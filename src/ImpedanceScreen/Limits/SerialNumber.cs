@@ -5,7 +5,7 @@ namespace ImpedanceScreen.Limits;
 /// <summary>Serial numbers against a limit file's pattern.</summary>
 public static class SerialNumber
 {
-    /// <summary>Makes a pattern that a whole serial number must match; it takes time in proportion to the text.</summary>
+    /// <summary>Makes a pattern that a whole serial number must match, in time proportional to its length.</summary>
     /// <exception cref="ArgumentException">The pattern is not a regular expression.</exception>
     /// <exception cref="NotSupportedException">The pattern uses a construct that can take for ever.</exception>
     public static Regex Compile(string pattern)

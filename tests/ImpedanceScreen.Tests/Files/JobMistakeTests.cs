@@ -15,37 +15,56 @@ public sealed class JobMistakeTests
     {
         { "name: OUT", "name: AUT", 9, 5, "outputs[0].name", "the fixture has no output `AUT`; did you mean `OUT`?" },
         { "L10k, L1k", "L10k, L2k", 14, 23, Idle + ".loads[1]", "the fixture has no load `L2k`; did you mean `L1k`?" },
-        { "pull-low", "pull-lwo", 23, 9, Low + ".stimulus", "the fixture has no stimulus `pull-lwo`; did you mean `pull-low`?" },
-        { "load_return: rail", "load_return: vcc", 26, 9, Low + ".load_return", "no load return `vcc`; choose one of: rail" },
+        {
+            "pull-low", "pull-lwo",
+            23, 9, Low + ".stimulus", "the fixture has no stimulus `pull-lwo`; did you mean `pull-low`?"
+        },
+        {
+            "load_return: rail", "load_return: vcc",
+            26, 9, Low + ".load_return", "no load return `vcc`; choose one of: rail"
+        },
         { "max: 5.5", "max: 10.5", 13, 9, Idle + ".unloaded_window_v", "no range of meter `dmm` holds 10.5 V" },
-        { "current_a: 0.01", "current_a: 0.005", 14, 23, Idle + ".loads[1]", "may draw 0.0055, more than the 0.005 A the output is allowed" },
+        {
+            "current_a: 0.01", "current_a: 0.005",
+            14, 23, Idle + ".loads[1]", "may draw 0.0055, more than the 0.005 A the output is allowed"
+        },
         { "power_w: 0.05", "power_w: 0.03", 14, 23, Idle + ".loads[1]", "more than the 0.03 W the output is allowed" },
         { "dwell_s: 2", "dwell_s: 0.2", 19, 51, Idle + ".allowed.dwell_s", "under load for 0.204 s" },
-        { "rated_load_ohm: 1000", "rated_load_ohm: 900", 18, 27, Idle + ".limits.droop_percent.rated_load_ohm", "nothing is extrapolated" },
+        {
+            "rated_load_ohm: 1000", "rated_load_ohm: 900",
+            18, 27, Idle + ".limits.droop_percent.rated_load_ohm", "nothing is extrapolated"
+        },
         {
             "source_voltage_v: 0.1, internal_resistance_ohm: 50}\n        unloaded_window_v: {min: -0.1, max: 0.4}",
             "source_voltage_v: 5.0, internal_resistance_ohm: 50}\n        unloaded_window_v: {min: -0.1, max: 5.2}",
             26, 9, Low + ".load_return", "no load current flows"
-        },
-        {
-            "nominal: {source_voltage_v: 5, internal_resistance_ohm: 100}\n        unloaded_window_v: {min: 4.5, max: 5.5}\n        loads: [L10k, L1k]\n        limits:\n          source_voltage_v: {min: 4.9, max: 5.1, rule: guarded, guard_factor: 1.0}\n          internal_resistance_ohm: {max: 120, rule: simple}\n          droop_percent: {rated_load_ohm: 1000, max: 12, rule: simple}\n",
-            "nominal: {source_voltage_v: 0, internal_resistance_ohm: 100}\n        unloaded_window_v: {min: -0.5, max: 0.5}\n        loads: [L10k, L1k]\n        limits:\n          internal_resistance_ohm: {max: 120, rule: simple}\n",
-            12, 19, Idle + ".nominal.source_voltage_v", "no load current flows"
         },
     };
 
     /// <summary>An edit of the small fixture file that makes it unfit for the small limit file.</summary>
     public static TheoryData<string, string, int, int, string, string> FixtureCases => new()
     {
-        { "voltage_v: 12,", "voltage_v: 13,", 11, 43, "board_supply.voltage_v", "above the product's voltage ceiling of 12 V" },
-        { "voltage_v: 5\n", "voltage_v: 12.5\n", 18, 5, "load_returns[0].voltage_v", "above the product's voltage ceiling of 12 V" },
+        {
+            "voltage_v: 12,", "voltage_v: 13,",
+            11, 43, "board_supply.voltage_v", "above the product's voltage ceiling of 12 V"
+        },
+        {
+            "voltage_v: 5\n", "voltage_v: 12.5\n",
+            18, 5, "load_returns[0].voltage_v", "above the product's voltage ceiling of 12 V"
+        },
     };
 
     /// <summary>An edit of the small fixture file after which a load of the limit file may not be closed.</summary>
     public static TheoryData<string, string, int, int, string, string> LoadingCases => new()
     {
-        { "power_rating_w: 0.6", "power_rating_w: 0.14", 14, 23, Idle + ".loads[1]", "may take 0.144, more than the 0.14 W it is rated for" },
-        { "current_limit_a: 0.1", "current_limit_a: 0.005", 27, 23, Low + ".loads[1]", "A that rail `rail` is limited to" },
+        {
+            "power_rating_w: 0.6", "power_rating_w: 0.14",
+            14, 23, Idle + ".loads[1]", "may take 0.144, more than the 0.14 W it is rated for"
+        },
+        {
+            "current_limit_a: 0.1", "current_limit_a: 0.005",
+            27, 23, Low + ".loads[1]", "A that rail `rail` is limited to"
+        },
     };
 
     [Theory]
@@ -78,6 +97,28 @@ public sealed class JobMistakeTests
     }
 
     [Fact]
+    public void An_output_of_zero_volt_draws_no_current_from_common()
+    {
+        string text = SmallFiles.LimitsText;
+        (string Find, string Replace)[] edits =
+        [
+            ("nominal: {source_voltage_v: 5,", "nominal: {source_voltage_v: 0,"),
+            ("{min: 4.5, max: 5.5}", "{min: -0.5, max: 0.5}"),
+            ("          source_voltage_v: {min: 4.9, max: 5.1, rule: guarded, guard_factor: 1.0}\n", ""),
+            ("          droop_percent: {rated_load_ohm: 1000, max: 12, rule: simple}\n", ""),
+        ];
+        foreach ((string find, string replace) in edits)
+        {
+            text = SmallFiles.Edit(text, find, replace);
+        }
+
+        FileText limits = new(SmallFiles.LimitsName, text);
+        SmallFiles.AssertOne(
+            Bind(limits, SmallFiles.Fixture()).Mistakes, limits, 12, 19, Idle + ".nominal.source_voltage_v",
+            "no load current flows");
+    }
+
+    [Fact]
     public void A_limit_that_a_zero_change_satisfies_is_refused_without_proof_of_load_current()
     {
         FileText limits = SmallFiles.Limits("internal_resistance_ohm: 100}", "internal_resistance_ohm: 0}");
@@ -96,7 +137,7 @@ public sealed class JobMistakeTests
             SmallFiles.Edit(SmallFiles.LimitsText, "          internal_resistance_ohm: {max: 120, rule: simple}\n", ""),
             "          droop_percent: {rated_load_ohm: 1000, max: 12, rule: simple}\n", "");
         FileText limits = new(
-            SmallFiles.LimitsName, SmallFiles.Edit(onlyVoltage, "internal_resistance_ohm: 100}", "internal_resistance_ohm: 0}"));
+            SmallFiles.LimitsName, SmallFiles.Edit(onlyVoltage, "resistance_ohm: 100}", "resistance_ohm: 0}"));
         string terminal = SmallFiles.Edit(SmallFiles.FixtureText, "two-wire", "terminal");
         FileText fixture = new(
             SmallFiles.FixtureName, SmallFiles.Edit(terminal, "contact-readback", "change-from-unloaded"));
@@ -115,7 +156,8 @@ public sealed class JobMistakeTests
     public void Mistakes_of_both_files_are_all_reported_the_limit_files_first()
     {
         FileText limits = SmallFiles.Limits("dwell_s: 2", "dwell_s: 0.1");
-        IReadOnlyList<Mistake> mistakes = Bind(limits, SmallFiles.Fixture("voltage_v: 12,", "voltage_v: -13,")).Mistakes;
+        FileText fixture = SmallFiles.Fixture("voltage_v: 12,", "voltage_v: -13,");
+        IReadOnlyList<Mistake> mistakes = Bind(limits, fixture).Mistakes;
         Assert.Collection(
             mistakes,
             first => Assert.Equal((SmallFiles.LimitsName, Idle + ".allowed.dwell_s"), (first.File, first.Key)),

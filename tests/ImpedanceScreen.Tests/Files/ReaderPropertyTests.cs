@@ -27,16 +27,16 @@ public sealed class ReaderPropertyTests
 
     [Fact]
     public void No_mutated_limit_file_makes_the_reader_throw() =>
-        Changes.Sample(changes => IsAnswered(SmallFiles.LimitsText, changes, LimitFileBinder.Bind), iter: 4000);
+        Changes.Sample(changes => IsAnswered(SmallFiles.LimitsText, changes, LimitFileBinder.Bind), iter: 1500);
 
     [Fact]
     public void No_mutated_fixture_file_makes_the_reader_throw() =>
-        Changes.Sample(changes => IsAnswered(SmallFiles.FixtureText, changes, FixtureFileBinder.Bind), iter: 2500);
+        Changes.Sample(changes => IsAnswered(SmallFiles.FixtureText, changes, FixtureFileBinder.Bind), iter: 1000);
 
     [Fact]
     public void No_text_at_all_makes_the_reader_throw() =>
         Gen.OneOf(Gen.Char[Awkward], Gen.Char['a', 'c']).Array[0, 60].Sample(
-            letters => IsAnswered(new string(letters), [], LimitFileBinder.Bind), iter: 10_000);
+            letters => IsAnswered(new string(letters), [], LimitFileBinder.Bind), iter: 5_000);
 
     // Either a value, or mistakes that each have a place, a problem and a cure, on one line.
     private static bool IsAnswered<T>(

@@ -84,6 +84,19 @@ public sealed class ReadingTests
         Assert.Equal("links[0].name", mistake.Key);
     }
 
+    [Theory]
+    [InlineData("relay: {unit: a, coil: 0, contact_input: 0}", "relay: *gone", 25, 16)]
+    [InlineData("relay: {unit: a, coil: 0, contact_input: 0}", "relay: {unit: *gone, coil: 0}", 25, 23)]
+    [InlineData("interlock: {unit: b, input: 1}", "interlock: *gone", 96, 14)]
+    [InlineData("links:\n", "links:\n  - *gone\n", 6, 5)]
+    public void An_alias_is_reported_once_and_what_it_stood_for_is_not_guessed(
+        string find, string replace, int line, int column)
+    {
+        Mistake mistake = Assert.Single(FixtureFileBinder.Bind(SmallFiles.Fixture(find, replace)).Mistakes);
+        Assert.Equal(new Mark(line, column), mistake.Mark);
+        Assert.Contains("an alias", mistake.Problem, StringComparison.Ordinal);
+    }
+
     [Fact]
     public void A_comma_culture_changes_neither_values_nor_messages()
     {
@@ -111,7 +124,8 @@ public sealed class ReadingTests
     {
         string large = new('#', YamlTree.LargestBytes + 1);
         Assert.Contains("larger than 1 MiB", Single(large).Problem, StringComparison.Ordinal);
-        Assert.Contains("deeper than 16 levels", Single("a: " + new string('[', 400_000)).Problem, StringComparison.Ordinal);
+        string deep = "a: " + new string('[', 400_000);
+        Assert.Contains("deeper than 16 levels", Single(deep).Problem, StringComparison.Ordinal);
         Assert.Contains("empty", Single("# nothing\n").Problem, StringComparison.Ordinal);
 
         static Mistake Single(string text) => Assert.Single(LimitFileBinder.Bind(new("odd", text)).Mistakes);
@@ -138,14 +152,16 @@ public sealed class ReadingTests
     private static (string Messages, double Volt, double Ohm) ReadAll()
     {
         LimitFile limits = LimitFileBinder.Bind(SmallFiles.Limits("max: 5.5", "max: 10.5")).Value;
+        LimitFile weak = LimitFileBinder.Bind(SmallFiles.Limits("current_a: 0.01", "current_a: 0.0015")).Value;
         FixtureFile fixture = FixtureFileBinder.Bind(SmallFiles.Fixture("voltage_v: 12,", "voltage_v: -12.5,")).Value;
         string messages = string.Join(
             "\n",
             JobBinder.Bind(limits, fixture).Mistakes
-                .Concat(JobBinder.Bind(LimitFileBinder.Bind(SmallFiles.Limits("current_a: 0.01", "current_a: 0.0015")).Value, fixture).Mistakes)
+                .Concat(JobBinder.Bind(weak, fixture).Mistakes)
                 .Concat(FixtureFileBinder.Bind(SmallFiles.Fixture("poll_ms: 20", "poll_ms: 60.5")).Mistakes)
                 .Concat(FixtureFileBinder.Bind(SmallFiles.Fixture("off_below_v: 0.5", "off_below_v: -0.5")).Mistakes)
                 .Concat(FixtureFileBinder.Bind(SmallFiles.Fixture("timeout_ms: 250", "timeout_ms: 19.5")).Mistakes));
-        return (messages, limits.Outputs[0].States[0].Limits[0].Min!.Value, fixture.LoadBanks[0].Loads[0].ResistanceOhm);
+        QuantityLimit limit = limits.Outputs[0].States[0].Limits[0];
+        return (messages, limit.Min!.Value, fixture.LoadBanks[0].Loads[0].ResistanceOhm);
     }
 }

@@ -10,21 +10,22 @@ public sealed partial class ReadmeTests
     private const string Probe = "qqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqqq";
 
     [Fact]
-    public void The_limit_readme_documents_every_key_and_no_other() =>
-        AssertSame("limits/README.md", KnownKeys(SmallFiles.LimitsText, text => LimitFileBinder.Bind(text).Mistakes));
+    public void The_limit_readme_documents_every_key_and_no_other() => AssertSame(
+        "limits/README.md", KnownKeys(SmallFiles.LimitsText, text => LimitFileBinder.Bind(text).Mistakes));
 
     [Fact]
-    public void The_fixture_readme_documents_every_key_and_no_other() =>
-        AssertSame("fixtures/README.md", KnownKeys(SmallFiles.FixtureText, text => FixtureFileBinder.Bind(text).Mistakes));
+    public void The_fixture_readme_documents_every_key_and_no_other() => AssertSame(
+        "fixtures/README.md", KnownKeys(SmallFiles.FixtureText, text => FixtureFileBinder.Bind(text).Mistakes));
 
     [Theory]
     [InlineData("limits/README.md")]
     [InlineData("fixtures/README.md")]
     public void Each_readme_says_what_the_program_is_not(string name)
     {
-        string text = File.ReadAllText(ShippedFiles.PathOf(name));
+        string lines = File.ReadAllText(ShippedFiles.PathOf(name));
+        string text = string.Join(' ', lines.Split((char[]?)null, StringSplitOptions.RemoveEmptyEntries));
         Assert.Contains("never a safety function", text, StringComparison.Ordinal);
-        Assert.Contains("local codes and\n  licensed practice", text.Replace("local codes and licensed", "local codes and\n  licensed", StringComparison.Ordinal), StringComparison.Ordinal);
+        Assert.Contains("local codes and licensed practice", text, StringComparison.Ordinal);
         Assert.Contains("The emergency stop and guarding are hardware", text, StringComparison.Ordinal);
     }
 
@@ -62,7 +63,7 @@ public sealed partial class ReadmeTests
     private static void AssertSame(string readme, SortedSet<string> accepted)
     {
         string text = File.ReadAllText(ShippedFiles.PathOf(readme));
-        SortedSet<string> documented = new(TableKey().Matches(text).Select(row => row.Groups["key"].Value), StringComparer.Ordinal);
+        List<string> documented = [.. TableKey().Matches(text).Select(row => row.Groups["key"].Value)];
         Assert.Empty(accepted.Except(documented, StringComparer.Ordinal));
         Assert.Empty(documented.Except(accepted, StringComparer.Ordinal));
     }

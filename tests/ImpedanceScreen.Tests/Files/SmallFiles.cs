@@ -36,7 +36,8 @@ internal static class SmallFiles
         IReadOnlyList<Mistake> mistakes, FileText file, int line, int column, string key, string words)
     {
         string found = string.Join("\n", mistakes);
-        Assert.StartsWith($"{file.Name}:{line}:{column}: {(key.Length == 0 ? "file" : key)}: ", found, StringComparison.Ordinal);
+        string subject = key.Length == 0 ? "file" : key;
+        Assert.StartsWith($"{file.Name}:{line}:{column}: {subject}: ", found, StringComparison.Ordinal);
         Assert.Contains(words, found, StringComparison.Ordinal);
         Assert.Single(mistakes);
 
