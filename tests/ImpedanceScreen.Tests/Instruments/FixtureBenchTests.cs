@@ -16,11 +16,11 @@ public sealed class FixtureBenchTests : IAsyncLifetime
     private readonly MemoryChannels channels = new();
     private readonly List<(TimeSpan At, byte Unit, WriteCoils Write)> writes = [];
     private readonly FixtureBench bench;
-    private readonly long start;
+    private readonly long startedAt;
 
     public FixtureBenchTests()
     {
-        start = time.GetTimestamp();
+        startedAt = time.GetTimestamp();
         channels.Serve("relays", relays.ServeAsync);
         channels.Serve("meter", meter.ServeAsync);
         relays.Banks[TestBench.SecondUnit] = new RegisterBank();
@@ -30,7 +30,7 @@ public sealed class FixtureBenchTests : IAsyncLifetime
             {
                 if (request is WriteCoils write)
                 {
-                    writes.Add((time.GetElapsedTime(start), unit, write));
+                    writes.Add((time.GetElapsedTime(startedAt), unit, write));
                 }
             };
         }
