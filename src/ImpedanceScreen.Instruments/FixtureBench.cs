@@ -95,7 +95,9 @@ public sealed class FixtureBench : IBench
         InputState state = await inputs.ReadAsync(cancellation);
         if (state.InterlockClosed)
         {
+            // A broken interlock is reported first; what the watchdogs drop then is to be opened anyway.
             await relays.KeepAliveAsync(cancellation);
+            await (handshake?.KeepAliveAsync(cancellation) ?? Task.CompletedTask);
         }
 
         return state;

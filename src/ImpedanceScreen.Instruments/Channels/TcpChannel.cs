@@ -36,18 +36,18 @@ public sealed class TcpChannel : IByteChannel
             await connecting.ConnectAsync(link.Host, link.Port, cancellation);
             return new TcpChannel(connecting, $"'{link.Name}' ({link.Host}:{link.Port})");
         }
-        catch (SocketException e)
+        catch (Exception e) when (e is SocketException or OperationCanceledException)
         {
             connecting.Dispose();
+            if (e is OperationCanceledException)
+            {
+                throw;
+            }
+
             throw new LinkLostException(
                 $"Link '{link.Name}': no connection to {link.Host}:{link.Port} ({e.Message}). "
                 + "Look at power, network cable and address.",
                 e);
-        }
-        catch
-        {
-            connecting.Dispose();
-            throw;
         }
     }
 

@@ -25,6 +25,7 @@ internal sealed class RtuWire : IModbusWire
     private int answerLength;
     private byte unit;
     private int timeouts;
+    private bool sent;
     private bool doubtful;
     private Deadline silentUntil;
     private Deadline mayStart;
@@ -43,6 +44,8 @@ internal sealed class RtuWire : IModbusWire
 
     public async ValueTask<TimeSpan> PrepareAsync(byte unit, ModbusRequest request, CancellationToken cancellation)
     {
+        this.unit = unit;
+        sent = false;
         channel = await link.GetAsync(cancellation);
         if (doubtful)
         {
@@ -52,7 +55,6 @@ internal sealed class RtuWire : IModbusWire
             doubtful = false;
         }
 
-        this.unit = unit;
         answerLength = RtuFrame.Overhead + request.AnswerLength;
         outgoing[0] = unit;
         outgoingLength = RtuFrame.Seal(outgoing, request.Write(outgoing.AsSpan(1)));
@@ -63,6 +65,7 @@ internal sealed class RtuWire : IModbusWire
 
     public async ValueTask<ReadOnlyMemory<byte>> ExchangeAsync(CancellationToken cancellation)
     {
+        sent = true;
         await channel!.WriteAsync(outgoing.AsMemory(0, outgoingLength), cancellation);
 
         // The port only took the bytes: the last one leaves when all have gone over the line.
@@ -93,9 +96,13 @@ internal sealed class RtuWire : IModbusWire
 
     public ValueTask FailedAsync(ModbusFault? fault)
     {
-        // Outlives the channel: what the unit still sends arrives on a new one as well.
-        doubtful = true;
-        silentUntil = Deadline.In(time, longestAnswer(unit));
+        if (sent)
+        {
+            // Outlives the channel: what the unit still sends arrives on a new one as well.
+            doubtful = true;
+            silentUntil = Deadline.In(time, longestAnswer(unit));
+        }
+
         timeouts = fault == ModbusFault.Timeout ? timeouts + 1 : timeouts;
         return fault == ModbusFault.LinkLost || timeouts >= TimeoutsBeforeReopening
             ? DropAsync()

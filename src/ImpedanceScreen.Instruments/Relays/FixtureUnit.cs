@@ -23,8 +23,8 @@ internal sealed class FixtureUnit(RelayUnit unit, Link link, IModbusClient clien
     /// <summary>Whether the last exchange failed.</summary>
     public bool IsFailing { get; private set; }
 
-    /// <summary>Time since the unit last answered.</summary>
-    public TimeSpan Silence => time.GetElapsedTime(answeredAt);
+    /// <summary>Whether the unit's watchdog has not heard from this program for a third of its time.</summary>
+    public bool NeedsWord => unit.WatchdogSilence is { } silence && time.GetElapsedTime(answeredAt) > silence / 3;
 
     /// <summary>The values of these coils in the order of their addresses.</summary>
     public Task<IReadOnlyDictionary<ushort, bool>> ReadCoilsAsync(

@@ -39,6 +39,20 @@ internal sealed class HandshakeCoils(Handshake handshake, IReadOnlyDictionary<st
         await ConfirmAsync(state, cancellation);
     }
 
+    /// <summary>
+    /// Reads the coils where a watchdog needs word, so that it does not drop them while a handler is waited for.
+    /// </summary>
+    public async Task KeepAliveAsync(CancellationToken cancellation)
+    {
+        if (Relays().Any(relay => units[relay.Unit].NeedsWord))
+        {
+            await ReadCoilsAsync(cancellation);
+        }
+    }
+
+    private IEnumerable<Relay> Relays() =>
+        Bins().Select(pair => pair.Relay).Append(handshake.Busy).Append(handshake.Done);
+
     private IEnumerable<(Relay Relay, SortBin Bin)> Bins()
     {
         yield return (handshake.PassBin, SortBin.Pass);
@@ -63,8 +77,7 @@ internal sealed class HandshakeCoils(Handshake handshake, IReadOnlyDictionary<st
     private async Task<Dictionary<Relay, bool>> ReadCoilsAsync(CancellationToken cancellation)
     {
         Dictionary<Relay, bool> coils = [];
-        IEnumerable<Relay> relays = Bins().Select(pair => pair.Relay).Append(handshake.Busy).Append(handshake.Done);
-        foreach (IGrouping<string, Relay> ofUnit in relays.GroupBy(relay => relay.Unit))
+        foreach (IGrouping<string, Relay> ofUnit in Relays().GroupBy(relay => relay.Unit))
         {
             IReadOnlyDictionary<ushort, bool> values =
                 await units[ofUnit.Key].ReadCoilsAsync(ofUnit.Select(relay => relay.Coil), cancellation);

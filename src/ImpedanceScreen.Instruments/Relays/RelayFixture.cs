@@ -113,7 +113,7 @@ internal sealed class RelayFixture
     {
         foreach (UnitRelays unit in units.Values)
         {
-            if (!IsDoubtful && unit.Unit.Unit.WatchdogSilence is { } silence && unit.Unit.Silence > silence / 3)
+            if (!IsDoubtful && unit.Unit.NeedsWord)
             {
                 await unit.ConfirmAsync(cancellation);
             }

@@ -123,16 +123,20 @@ public sealed class ScpiMeter : IAsyncDisposable
         }
 
         await session.CleanAsync(cancellation);
+        bool ready = false;
         try
         {
             await CheckIdentityAsync(cancellation);
             await SetUpAsync(cancellation);
+            ready = true;
         }
-        catch
+        finally
         {
-            // A meter that was identified but not set up must not be taken for ready.
-            session.Doubt();
-            throw;
+            if (!ready)
+            {
+                // A meter that was identified but not set up must not be taken for ready.
+                session.Doubt();
+            }
         }
     }
 

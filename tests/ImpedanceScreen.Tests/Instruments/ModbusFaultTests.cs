@@ -157,6 +157,20 @@ public sealed class ModbusFaultTests
         Assert.Equal([RegisterBank.InitialHolding(8)], await time.PumpAsync(ReadAsync(client, 8)));
     }
 
+    [Theory]
+    [InlineData(false)]
+    [InlineData(true)]
+    public async Task A_link_that_does_not_open_is_lost_by_name_and_opens_the_next_time(bool serial)
+    {
+        ModbusPeer peer = new(serial);
+        Link link = serial ? TestLinks.Serial() : TestLinks.Tcp();
+        MemoryChannels channels = new(link, peer.ServeAsync) { Refusals = 1 };
+        await using ModbusClient client = TestLinks.Client(link, channels, time);
+        ModbusException error = await Assert.ThrowsAsync<ModbusException>(() => ReadAsync(client, 7));
+        Assert.Equal(ModbusFault.LinkLost, error.Fault);
+        Assert.Equal([RegisterBank.InitialHolding(8)], await time.PumpAsync(ReadAsync(client, 8)));
+    }
+
     [Fact]
     public async Task An_exception_reply_is_a_refusal_and_is_not_tried_again()
     {

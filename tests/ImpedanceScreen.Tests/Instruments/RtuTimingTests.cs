@@ -12,6 +12,9 @@ public sealed class RtuTimingTests
 {
     private readonly FakeTimeProvider time = new();
     private readonly List<TimeSpan> written = [];
+    private readonly long start;
+
+    public RtuTimingTests() => start = time.GetTimestamp();
 
     [Theory]
     [InlineData(9600)]
@@ -63,7 +66,7 @@ public sealed class RtuTimingTests
     private static Task<bool[]> ReadAsync(ModbusClient client) =>
         client.ReadCoilsAsync(ModbusPeer.Unit, 3, 1, CancellationToken.None);
 
-    private TimeSpan Now() => time.GetElapsedTime(0);
+    private TimeSpan Now() => time.GetElapsedTime(start);
 
     private ModbusClient ClientOn(SerialLink link, ModbusPeer peer)
     {

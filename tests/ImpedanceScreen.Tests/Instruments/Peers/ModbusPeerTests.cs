@@ -10,35 +10,23 @@ public sealed class ModbusPeerTests
 {
     private static readonly ChannelFactory Channels = new(TimeProvider.System, NullLogger.Instance);
 
-    [Fact]
-    public async Task Over_tcp_pymodbus_answers_all_functions()
+    [Theory]
+    [InlineData("pymodbus")]
+    [InlineData("libmodbus")]
+    public async Task Over_tcp_a_foreign_server_answers_all_functions(string server)
     {
         int port = PeerProcess.FreePort();
-        await using PeerProcess server = await StartPythonAsync("tcp", $"{port}");
+        await using PeerProcess running = await StartAsync(server, "tcp", $"{port}");
         await HoldAsync(TestLinks.Tcp(port));
     }
 
-    [Fact]
-    public async Task On_a_serial_line_pymodbus_answers_all_functions()
+    [Theory]
+    [InlineData("pymodbus")]
+    [InlineData("libmodbus")]
+    public async Task On_a_serial_line_a_foreign_server_answers_all_functions(string server)
     {
         await using TerminalPair line = await TerminalPair.OpenAsync();
-        await using PeerProcess server = await StartPythonAsync("rtu", line.Far);
-        await HoldAsync(TestLinks.Serial(line.Near));
-    }
-
-    [Fact]
-    public async Task Over_tcp_libmodbus_answers_all_functions()
-    {
-        int port = PeerProcess.FreePort();
-        await using PeerProcess server = await StartNativeAsync("tcp", $"{port}");
-        await HoldAsync(TestLinks.Tcp(port));
-    }
-
-    [Fact]
-    public async Task On_a_serial_line_libmodbus_answers_all_functions()
-    {
-        await using TerminalPair line = await TerminalPair.OpenAsync();
-        await using PeerProcess server = await StartNativeAsync("rtu", line.Far);
+        await using PeerProcess running = await StartAsync(server, "rtu", line.Far);
         await HoldAsync(TestLinks.Serial(line.Near));
     }
 
@@ -87,8 +75,14 @@ public sealed class ModbusPeerTests
     private static Task<ushort[]> ReadAsync(ModbusClient client, ushort address) =>
         client.ReadHoldingRegistersAsync(ModbusPeer.Unit, address, 1, CancellationToken.None);
 
-    private static Task<PeerProcess> StartPythonAsync(string kind, string where) => PeerProcess.StartAsync(
-        "python3-pymodbus", "/usr/bin/python3", Path.Combine(PeerProcess.Folder, "modbus_server.py"), kind, where);
+    private static Task<PeerProcess> StartAsync(string server, string kind, string where) => server == "libmodbus"
+        ? StartNativeAsync(kind, where)
+        : PeerProcess.StartAsync(
+            "python3-pymodbus python3-serial-asyncio",
+            "/usr/bin/python3",
+            Path.Combine(PeerProcess.Folder, "modbus_server.py"),
+            kind,
+            where);
 
     private static async Task<PeerProcess> StartNativeAsync(string kind, string where)
     {
