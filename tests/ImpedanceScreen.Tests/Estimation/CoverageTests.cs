@@ -2,6 +2,7 @@ using ImpedanceScreen.Estimation;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Quantities;
+using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Tests.Estimation;
 
@@ -57,8 +58,8 @@ public sealed class CoverageTests
         int inside = 0;
         for (int i = 0; i < Draws; i++)
         {
-            double chiSquared = Enumerable.Range(0, 6).Sum(_ => Math.Pow(Reference.FitCase.Normal(random), 2));
-            double t = Reference.FitCase.Normal(random) / Math.Sqrt(chiSquared / 6);
+            double chiSquared = Enumerable.Range(0, 6).Sum(_ => Math.Pow(FitCase.Normal(random), 2));
+            double t = FitCase.Normal(random) / Math.Sqrt(chiSquared / 6);
             inside += Math.Abs(t + (2 * Flat()) + Flat()) <= bound ? 1 : 0;
         }
 

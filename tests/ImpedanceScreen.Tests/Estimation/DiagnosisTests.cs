@@ -4,6 +4,7 @@ using ImpedanceScreen.Estimation;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Planning;
 using ImpedanceScreen.Recording;
+using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Tests.Estimation;
 

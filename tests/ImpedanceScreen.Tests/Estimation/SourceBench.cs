@@ -3,9 +3,8 @@ using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Limits;
 using ImpedanceScreen.Planning;
-using ImpedanceScreen.Reference;
 
-namespace ImpedanceScreen.Tests.Estimation;
+namespace ImpedanceScreen.Reference;
 
 /// <summary>A made-up job, and readings of a made-up source on it, drawn from what the job declares.</summary>
 internal sealed class SourceBench

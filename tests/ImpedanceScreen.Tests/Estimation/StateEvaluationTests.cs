@@ -6,6 +6,7 @@ using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Planning;
 using ImpedanceScreen.Quantities;
 using ImpedanceScreen.Recording;
+using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Tests.Estimation;
 
