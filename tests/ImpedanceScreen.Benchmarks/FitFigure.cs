@@ -7,7 +7,9 @@ using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Benchmarks;
 
-/// <summary>The estimator's speed against MathNet.Numerics' Levenberg-Marquardt on the same problems, and its allocation.</summary>
+/// <summary>
+/// The estimator's speed against MathNet.Numerics' Levenberg-Marquardt on the same problems, and its allocation.
+/// </summary>
 internal sealed class FitFigure : IFigureCommand
 {
     private const double RatioWanted = 240;
