@@ -32,8 +32,10 @@ public static class DerivedQuantities
     }
 
     /// <summary>
-    /// Equivalent short-circuit current Vth/Rth by calculation with its 95 % interval (E. C. Fieller, Journal of the Royal
-    /// Statistical Society B 16, 1954); null, "not determined", where Rth is below three times its uncertainty. The real
+    /// Equivalent short-circuit current Vth/Rth by calculation with its 95 % interval (E. C. Fieller, Journal of the
+    /// Royal
+    /// Statistical Society B 16, 1954); null, "not determined", where Rth is below three times its uncertainty. The
+    /// real
     /// output limits earlier, and no output is ever shorted.
     /// </summary>
     public static ShortCircuitCurrent? ShortCircuit(Estimate estimate)
@@ -48,7 +50,8 @@ public static class DerivedQuantities
             return null;
         }
 
-        // All I with (Vth - I Rth)² <= k² (uV² - 2 I cov + I² uR²): between the roots of a quadratic that opens upwards.
+        // All I with (Vth - I Rth)² <= k² (uV² - 2 I cov + I² uR²): between the roots of a quadratic that opens
+        // upwards.
         double k = Math.Max(estimate.SourceVoltageCoverage, estimate.InternalResistanceCoverage);
         k = double.IsNaN(k) ? 0 : k;
         double squared = k * k;

@@ -6,7 +6,8 @@ namespace ImpedanceScreen.Estimation;
 
 /// <summary>
 /// Distribution of the error of an estimate: its two widest rectangular inputs convolved exactly with a normal
-/// distribution (a t distribution where its degrees of freedom are finite) for all the rest. With a second rectangle of a
+/// distribution (a t distribution where its degrees of freedom are finite) for all the rest. With a second rectangle
+/// of a
 /// third of the first, as offset beside gain, one rectangle alone would hold 94.4 % instead of 95 %.
 /// </summary>
 /// <param name="RestUncertainty">Standard uncertainty of the rest, in the unit of the estimate.</param>
@@ -17,7 +18,9 @@ namespace ImpedanceScreen.Estimation;
 public readonly record struct ErrorDistribution(
     double RestUncertainty, double DegreesOfFreedom, double HalfWidth = 0, double SecondHalfWidth = 0)
 {
-    /// <summary>A rectangle narrower than this part of the rest is part of the rest: nobody can see its corners.</summary>
+    /// <summary>
+    /// A rectangle narrower than this part of the rest is part of the rest: nobody can see its corners.
+    /// </summary>
     private const double Narrow = 0.01;
 
     /// <summary>Combined standard uncertainty.</summary>
@@ -36,7 +39,9 @@ public readonly record struct ErrorDistribution(
         return error > 0 ? 1 - Lower(-error) : Lower(error);
     }
 
-    /// <summary>Factor k by which the standard uncertainty is multiplied for an interval that holds the true value.</summary>
+    /// <summary>
+    /// Factor k by which the standard uncertainty is multiplied for an interval that holds the true value.
+    /// </summary>
     /// <param name="probability">Probability of the interval, as 0.95.</param>
     /// <returns>The factor; NaN where there is no uncertainty.</returns>
     public double CoverageFactor(double probability)
@@ -47,7 +52,8 @@ public readonly record struct ErrorDistribution(
             return double.NaN;
         }
 
-        // False position with the Illinois rule (M. Dowell, P. Jarratt, BIT 11, 1971); the bracket holds any k asked for.
+        // False position with the Illinois rule (M. Dowell, P. Jarratt, BIT 11, 1971); the bracket holds any k asked
+        // for.
         double tail = 0.5 * (1 - probability);
         double low = 0;
         double atLow = 0.5 - tail;

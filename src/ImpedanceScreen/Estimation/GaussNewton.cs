@@ -212,7 +212,8 @@ internal readonly ref struct GaussNewton
     }
 
     private static int SizeOf(in FitProblem problem) =>
-        2 + problem.CommonCount + (problem.OffsetUncertaintyVolt > 0 ? 1 : 0) + (problem.ReturnUncertaintyVolt > 0 ? 1 : 0);
+        2 + problem.CommonCount + (problem.OffsetUncertaintyVolt > 0 ? 1 : 0)
+            + (problem.ReturnUncertaintyVolt > 0 ? 1 : 0);
 
     private double Return(double offset)
     {

@@ -14,7 +14,8 @@ internal sealed record Knee(
     Load Load, double ReadVolt, double ExpectedVolt, double LineAmpere, double KneeAmpere);
 
 /// <summary>
-/// Finds the load current beyond which the voltage falls faster than the line of the lighter loads. The statistic is the
+/// Finds the load current beyond which the voltage falls faster than the line of the lighter loads. The statistic is
+/// the
 /// rise of chi-squared when the point joins the fit: the squared difference from the prediction over its variance, all
 /// common errors considered. Planner and diagnosis ask it in the same way.
 /// </summary>

@@ -19,7 +19,8 @@ internal static class LoadCurrentTest
         string[] open = [.. set.Loaded.Where(read => read.ContactProved == false).Select(Name)];
         if (open.Length > 0)
         {
-            return Fault($"load relay {List(open)} did not close: its contact reads open; look at relay and coil wiring");
+            return Fault($"load relay {List(open)} did not close: its contact reads open; look at relay and "
+                + "coil wiring");
         }
 
         if (set.Unloaded.Length == 0)
@@ -34,13 +35,15 @@ internal static class LoadCurrentTest
         }
 
         return silent.Length == set.Loaded.Length && silent.Length > 1
-            ? Fault("no load changes the reading: selector relay did not close, or the path to the loads or their return "
+            ? Fault("no load changes the reading: selector relay did not close, or the path to the loads or "
+                + "their return "
                 + "is open; look at selector relay, fixture contacts and the output's joint")
             : Fault($"load relay {List(silent)} did not close or joint open: no change from unloaded");
     }
 
     /// <summary>
-    /// Where the whole does not fit: the loads that changed nothing, if without them all is well. Their contacts may read
+    /// Where the whole does not fit: the loads that changed nothing, if without them all is well. Their contacts may
+    /// read
     /// closed; the load behind them, or its joint, is open.
     /// </summary>
     public static SourceFault? FindBehindContact(ReadingSet set, Func<LoadPointReadings[], bool> fits)
@@ -61,7 +64,8 @@ internal static class LoadCurrentTest
         || Changes(set, read);
 
     /// <summary>
-    /// Whether a loaded mean lies below the first unloaded one, towards the return, by more than the expanded uncertainty
+    /// Whether a loaded mean lies below the first unloaded one, towards the return, by more than the expanded
+    /// uncertainty
     /// of the difference: a load that never came on is taken for one only once in two thousand.
     /// </summary>
     public static bool Changes(ReadingSet set, LoadPointReadings read)

@@ -5,12 +5,15 @@ using ImpedanceScreen.Quantities;
 
 namespace ImpedanceScreen.Estimation;
 
-/// <summary>What a plan promises: the uncertainty that its readings would have if the output were the nominal source.</summary>
+/// <summary>
+/// What a plan promises: the uncertainty that its readings would have if the output were the nominal source.
+/// </summary>
 public static class PlannedUncertainty
 {
     /// <summary>Expanded uncertainty U for p = 0.95 of each limit, in the order of the state's limits.</summary>
     /// <param name="job">The output and state.</param>
-    /// <param name="temperatureDegC">Temperature beside the loads as the sensor will know it; null without a sensor.</param>
+    /// <param name="temperatureDegC">Temperature beside the loads as the sensor will know it; null without a
+    /// sensor.</param>
     /// <returns>Infinity where the plan cannot determine the quantity at all.</returns>
     public static IReadOnlyList<double> Of(StateJob job, Uncertain? temperatureDegC)
     {

@@ -4,7 +4,9 @@ using System.Runtime.Intrinsics;
 
 namespace ImpedanceScreen.Estimation;
 
-/// <summary>Operations on rows of equations, four values at a time; rows are padded with zeros to whole vectors.</summary>
+/// <summary>
+/// Operations on rows of equations, four values at a time; rows are padded with zeros to whole vectors.
+/// </summary>
 internal static class Rows
 {
     /// <summary>Length of a row that holds so many values.</summary>

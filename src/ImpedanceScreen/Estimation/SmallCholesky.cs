@@ -1,9 +1,14 @@
 namespace ImpedanceScreen.Estimation;
 
-/// <summary>Cholesky factor of a small symmetric matrix, row by row in a span (rows may be wider than the matrix); only the lower triangle is used.</summary>
+/// <summary>
+/// Cholesky factor of a small symmetric matrix, row by row in a span (rows may be wider than the matrix); only the
+/// lower triangle is used.
+/// </summary>
 internal static class SmallCholesky
 {
-    /// <summary>A pivot below this part of its diagonal is rounding: the matrix is singular as far as it is known.</summary>
+    /// <summary>
+    /// A pivot below this part of its diagonal is rounding: the matrix is singular as far as it is known.
+    /// </summary>
     private const double Rounding = 1e-14;
 
     /// <summary>Replaces the lower triangle by its factor L.</summary>

@@ -43,7 +43,8 @@ internal static class SourceDiagnosis
         {
             return new(
                 SourceFaultKind.LoadNotProved,
-                "too little load current: the readings do not determine the internal resistance; look at loads and return",
+                "too little load current: the readings do not determine the internal resistance; look at loads "
+                    + "and return",
                 OfFixture: true);
         }
 
@@ -51,7 +52,8 @@ internal static class SourceDiagnosis
         string degrees = fit.DegreesOfFreedom.ToString(CultureInfo.InvariantCulture);
         return new(
             SourceFaultKind.Curved,
-            $"curved: no straight line of voltage against current within the uncertainty (chi-squared {chiSquared} with "
+            $"curved: no straight line of voltage against current within the uncertainty (chi-squared "
+                + $"{chiSquared} with "
             + $"{degrees} degrees of freedom); look at the output stage",
             OfFixture: false);
     }
@@ -86,7 +88,8 @@ internal static class SourceDiagnosis
             if (read.Readings.Count == 0 || read.Readings.Any(reading => !double.IsFinite(reading.Volt)))
             {
                 return new(
-                    SourceFaultKind.NoNumber, $"the meter gave no number, {place}; look at meter and link", OfFixture: true);
+                    SourceFaultKind.NoNumber, $"the meter gave no number, {place}; look at meter and link",
+                        OfFixture: true);
             }
         }
 
@@ -158,7 +161,8 @@ internal static class SourceDiagnosis
         LimitingTest.Find(set, rate) is not { } knee ? null : new(
             SourceFaultKind.CurrentLimited,
             $"current-limited: on the line up to {UncertainText.Current(knee.LineAmpere)}, below it at load "
-            + $"{knee.Load.Name} ({UncertainText.Voltage(knee.ReadVolt)} at {UncertainText.Current(knee.KneeAmpere)} where "
+            + $"{knee.Load.Name} ({UncertainText.Voltage(knee.ReadVolt)} at "
+                + $"{UncertainText.Current(knee.KneeAmpere)} where "
             + $"the line gives {UncertainText.Voltage(knee.ExpectedVolt)}); look for a weak output stage",
             OfFixture: false);
 

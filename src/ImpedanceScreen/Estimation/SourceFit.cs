@@ -2,7 +2,9 @@ using System.Runtime.InteropServices;
 
 namespace ImpedanceScreen.Estimation;
 
-/// <summary>What a fit gives, unrounded. Resistance is all that lies ahead of the sensing point: lead included.</summary>
+/// <summary>
+/// What a fit gives, unrounded. Resistance is all that lies ahead of the sensing point: lead included.
+/// </summary>
 /// <param name="SourceVoltageVolt">Vth, V.</param>
 /// <param name="ResistanceOhm">Rth and, for two-wire sensing, the lead, Ω.</param>
 /// <param name="VoltageVariance">Variance of Vth, V².</param>

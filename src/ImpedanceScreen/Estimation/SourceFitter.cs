@@ -34,7 +34,8 @@ public static class SourceFitter
     }
 
     /// <summary>
-    /// Turns a fit with equal weights into one whose <em>uncertainties are unknown</em>: covariance scaled by the residual
+    /// Turns a fit with equal weights into one whose <em>uncertainties are unknown</em>: covariance scaled by the
+    /// residual
     /// variance s², no p-value. For comparison with published fits only, never for a board.
     /// </summary>
     /// <param name="fit">A fit whose points all had one uncertainty and that had no other error.</param>
@@ -95,7 +96,8 @@ public static class SourceFitter
     }
 
     // The error that remains after a step is estimated from how fast steps shrink; it and the step itself (at whose
-    // start the covariance was formed) have to be small against the uncertainty, or against the scatter if that is less.
+    // start the covariance was formed) have to be small against the uncertainty, or against the scatter if that is
+    // less.
     private static bool HasConverged(double decrement, double before, double objective, double floor)
     {
         double scale = Math.Min(1, objective);

@@ -6,13 +6,16 @@ using ImpedanceScreen.Recording;
 
 namespace ImpedanceScreen.Estimation;
 
-/// <summary>From the readings of one output in one drive state to its result. Pure: the same readings, the same result.</summary>
+/// <summary>
+/// From the readings of one output in one drive state to its result. Pure: the same readings, the same result.
+/// </summary>
 public static class StateEvaluation
 {
     /// <summary>Estimates, diagnoses and decides.</summary>
     /// <param name="job">The output and state.</param>
     /// <param name="readings">What was read, in the order in which it was read; at least one point.</param>
-    /// <param name="temperatureDegC">Temperature beside the loads with the sensor's standard uncertainty; null without one.</param>
+    /// <param name="temperatureDegC">Temperature beside the loads with the sensor's standard uncertainty; null
+    /// without one.</param>
     /// <param name="testsPerBoard">Diagnostic tests on the board (<see cref="DiagnosticAlarm.TestsOf"/>).</param>
     /// <param name="startedAt">When the attempt began, UTC; times of readings are kept from then.</param>
     /// <exception cref="ArgumentException">No load point at all.</exception>
@@ -42,7 +45,8 @@ public static class StateEvaluation
 
         IReadOnlyList<LimitDecision> decisions = Decide(job, estimate, temperatureDegC);
         return new(
-            job.Output.Name, job.State.Name, job.Range.FullScaleVolt, [.. readings.Select(read => Keep(read, startedAt))],
+            job.Output.Name, job.State.Name, job.Range.FullScaleVolt,
+            [.. readings.Select(read => Keep(read, startedAt))],
             estimate?.Recorded(), fault, decisions, Overall(set, fault, decisions));
     }
 

@@ -22,7 +22,9 @@ internal sealed record CommonTerm(string Name, InputDistribution Distribution, d
 /// </summary>
 internal sealed class StateMeasurement
 {
-    /// <summary>Assumed beside the loads where no sensor says otherwise: an ordinary workshop, 23 °C within 5 K.</summary>
+    /// <summary>
+    /// Assumed beside the loads where no sensor says otherwise: an ordinary workshop, 23 °C within 5 K.
+    /// </summary>
     public static readonly Uncertain AssumedTemperatureDegC = new(23, 5 / Math.Sqrt(3));
 
     private static readonly double Root12 = Math.Sqrt(12);
@@ -33,8 +35,10 @@ internal sealed class StateMeasurement
 
     /// <summary>Prepares a measurement.</summary>
     /// <param name="job">The output and state.</param>
-    /// <param name="means">At least two points, unloaded first, loads in the plan's order; no overload among them.</param>
-    /// <param name="rail">Mean reading of the return rail; null where loads return to common or it was not read.</param>
+    /// <param name="means">At least two points, unloaded first, loads in the plan's order; no overload among
+    /// them.</param>
+    /// <param name="rail">Mean reading of the return rail; null where loads return to common or it was not
+    /// read.</param>
     /// <param name="temperatureDegC">Temperature beside the loads; null where it was not measured.</param>
     public StateMeasurement(
         StateJob job, IEnumerable<PointMean> means, PointMean? rail, Uncertain? temperatureDegC)
@@ -110,7 +114,8 @@ internal sealed class StateMeasurement
         return load is null ? -1 : job.Loads.Count;
     }
 
-    // The same meter shares its offset and gain with the rail's reading; another meter is covered by the stated uncertainty.
+    // The same meter shares its offset and gain with the rail's reading; another meter is covered by the stated
+    // uncertainty.
     private static (double Volt, double UncertaintyVolt, bool Shares) ReturnOf(StateJob job, PointMean? rail)
     {
         if (job.LoadReturn is not { } back)
@@ -124,7 +129,8 @@ internal sealed class StateMeasurement
         }
 
         return string.Equals(back.Meter, job.Meter.Name, StringComparison.Ordinal)
-            ? (read.Volt, double.Hypot(job.Range.NoiseVolt / Math.Sqrt(read.Count), job.Range.ResolutionVolt / Root12), true)
+            ? (read.Volt, double.Hypot(job.Range.NoiseVolt / Math.Sqrt(read.Count),
+                job.Range.ResolutionVolt / Root12), true)
             : (read.Volt, back.VoltageVolt.StandardUncertainty, false);
     }
 

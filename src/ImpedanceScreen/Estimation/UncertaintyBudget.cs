@@ -3,7 +3,8 @@ using ImpedanceScreen.Quantities;
 namespace ImpedanceScreen.Estimation;
 
 /// <summary>
-/// What every input contributes to the uncertainty of Vth and Rth (JCGM 100:2008, clause 5). Made once a record; the fit
+/// What every input contributes to the uncertainty of Vth and Rth (JCGM 100:2008, clause 5). Made once a record; the
+/// fit
 /// itself is free of it.
 /// </summary>
 internal sealed class UncertaintyBudget

@@ -12,8 +12,10 @@ public static class Rounding
     public const int BudgetDigits = 4;
 
     /// <summary>
-    /// Rounds to significant decimal digits: the exact decimal expansion of the value is rounded (halves away from zero)
-    /// and the nearest double to it returned, so that rounding again changes nothing. Negative zero becomes zero; what is
+    /// Rounds to significant decimal digits: the exact decimal expansion of the value is rounded (halves away from
+    /// zero)
+    /// and the nearest double to it returned, so that rounding again changes nothing. Negative zero becomes zero;
+    /// what is
     /// not finite stays as it is.
     /// </summary>
     /// <param name="value">The value.</param>

@@ -9,7 +9,9 @@ public sealed class LimitJudgeTests
     /// <summary>U of a normal error with u = 1, k = 1.95996398 (9 digits as recorded).</summary>
     private const double U = 1.95996398;
 
-    /// <summary>JCGM 106:2012, 7.4 (Zener voltage), 7.5 (viscosity): printed 0.92 and 0.66, recomputed to 12 digits.</summary>
+    /// <summary>
+    /// JCGM 106:2012, 7.4 (Zener voltage), 7.5 (viscosity): printed 0.92 and 0.66, recomputed to 12 digits.
+    /// </summary>
     [Theory]
     [InlineData(-5.47, 0.05, null, -5.4, 0.919243340766)]
     [InlineData(13.6, 1.8, 12.5, 16.3, 0.662629786495)]
@@ -20,7 +22,10 @@ public sealed class LimitJudgeTests
         Assert.Equal(probability, decision.ConformityProbability, 1e-9);
     }
 
-    /// <summary>ILAC-G8:09/2019, Table 1: guard band w = r U with U = 2u, probability of false accept at the acceptance limit.</summary>
+    /// <summary>
+    /// ILAC-G8:09/2019, Table 1: guard band w = r U with U = 2u, probability of false accept at the acceptance
+    /// limit.
+    /// </summary>
     [Theory]
     [InlineData(1.5, 0.00134989803163)]
     [InlineData(1, 0.0227501319482)]

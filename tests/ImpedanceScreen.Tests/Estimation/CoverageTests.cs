@@ -2,6 +2,7 @@ using ImpedanceScreen.Estimation;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Quantities;
+using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Tests.Estimation;
 
@@ -28,9 +29,12 @@ public sealed class CoverageTests
 
     [Fact]
     public void A_rectangle_alone_has_the_exact_factor() =>
-        Assert.Equal(0.95 * Math.Sqrt(3), new ErrorDistribution(0, double.PositiveInfinity, 1).CoverageFactor(0.95), 1e-12);
+        Assert.Equal(0.95 * Math.Sqrt(3), new ErrorDistribution(0, double.PositiveInfinity, 1).CoverageFactor(0.95),
+            1e-12);
 
-    /// <summary>Normal quantile 0.975 and JCGM 100:2008 Table G.2 (t 0.95, recomputed to 12 digits: G.4.1 with 18 degrees).</summary>
+    /// <summary>
+    /// Normal quantile 0.975 and JCGM 100:2008 Table G.2 (t 0.95, recomputed to 12 digits: G.4.1 with 18 degrees).
+    /// </summary>
     [Theory]
     [InlineData(double.PositiveInfinity, 1.95996398454005)]
     [InlineData(18, 2.10092204024)]
@@ -38,7 +42,9 @@ public sealed class CoverageTests
     public void Without_a_rectangle_the_factor_is_the_quantile(double degrees, double factor) =>
         Assert.Equal(factor, new ErrorDistribution(3, degrees).CoverageFactor(0.95), 1e-9);
 
-    /// <summary>JCGM 101:2008, 9.2.4: rectangular inputs 1, 1, 1, 10; exact half width 17.0158 (printed: 17.0).</summary>
+    /// <summary>
+    /// JCGM 101:2008, 9.2.4: rectangular inputs 1, 1, 1, 10; exact half width 17.0158 (printed: 17.0).
+    /// </summary>
     [Fact]
     public void One_dominating_rectangle_of_JCGM_101_9_2_4_is_met()
     {
@@ -57,8 +63,8 @@ public sealed class CoverageTests
         int inside = 0;
         for (int i = 0; i < Draws; i++)
         {
-            double chiSquared = Enumerable.Range(0, 6).Sum(_ => Math.Pow(Reference.FitCase.Normal(random), 2));
-            double t = Reference.FitCase.Normal(random) / Math.Sqrt(chiSquared / 6);
+            double chiSquared = Enumerable.Range(0, 6).Sum(_ => Math.Pow(FitCase.Normal(random), 2));
+            double t = FitCase.Normal(random) / Math.Sqrt(chiSquared / 6);
             inside += Math.Abs(t + (2 * Flat()) + Flat()) <= bound ? 1 : 0;
         }
 
@@ -93,8 +99,10 @@ public sealed class CoverageTests
             }
 
             estimates++;
-            volts += Holds(vth, estimate.SourceVoltageVolt, estimate.SourceVoltageUncertaintyVolt, estimate.SourceVoltageCoverage);
-            ohms += Holds(rth, estimate.InternalResistanceOhm, estimate.InternalResistanceUncertaintyOhm, estimate.InternalResistanceCoverage);
+            volts += Holds(vth, estimate.SourceVoltageVolt, estimate.SourceVoltageUncertaintyVolt,
+                estimate.SourceVoltageCoverage);
+            ohms += Holds(rth, estimate.InternalResistanceOhm, estimate.InternalResistanceUncertaintyOhm,
+                estimate.InternalResistanceCoverage);
         }
 
         // False alarms take a board away: at most 0.1 % are stated for the whole board.

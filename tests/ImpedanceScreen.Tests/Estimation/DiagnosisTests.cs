@@ -4,6 +4,7 @@ using ImpedanceScreen.Estimation;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Planning;
 using ImpedanceScreen.Recording;
+using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Tests.Estimation;
 
@@ -72,7 +73,8 @@ public sealed class DiagnosisTests
         draw.PathOhm[1] = double.PositiveInfinity;
         IReadOnlyList<LoadPointReadings> readings = bench.Read(job, ampere => 5 - (100 * ampere), draw);
         StateResult result = Evaluate(job, readings);
-        AssertFault(result, SourceFaultKind.LoadNotProved, Decision.Undecided, "load relay L1000 did not close or joint open");
+        AssertFault(result, SourceFaultKind.LoadNotProved, Decision.Undecided,
+            "load relay L1000 did not close or joint open");
     }
 
     [Fact]
@@ -112,9 +114,11 @@ public sealed class DiagnosisTests
         MeterReading over = new("9.9E37", ReadingCondition.Overload, double.NaN, SourceBench.Start);
         MeterReading none = new("9.91E37", ReadingCondition.NotANumber, double.NaN, SourceBench.Start);
         AssertFault(
-            Evaluate(job, [new(new LoadPoint(null), null, [over])]), SourceFaultKind.Overload, Decision.Fail, "overload");
+            Evaluate(job, [new(new LoadPoint(null), null, [over])]), SourceFaultKind.Overload, Decision.Fail,
+                "overload");
         AssertFault(
-            Evaluate(job, [new(new LoadPoint(null), null, [none])]), SourceFaultKind.NoNumber, Decision.Undecided, "no number");
+            Evaluate(job, [new(new LoadPoint(null), null, [none])]), SourceFaultKind.NoNumber, Decision.Undecided,
+                "no number");
     }
 
     [Fact]
@@ -133,7 +137,8 @@ public sealed class DiagnosisTests
     }
 
     private static IReadOnlyList<LoadPointReadings> Disturb(
-        IReadOnlyList<LoadPointReadings> readings, Func<LoadPointReadings, bool> which, Func<double, int, double> change) =>
+        IReadOnlyList<LoadPointReadings> readings, Func<LoadPointReadings, bool> which,
+        Func<double, int, double> change) =>
         [.. readings.Select(read => !which(read) ? read : read with
         {
             Readings = [.. read.Readings.Select((reading, i) => SourceBench.Valid(change(reading.Volt, i)))],

@@ -8,7 +8,8 @@ namespace ImpedanceScreen.Tests.Estimation;
 public sealed class PublishedFitTests
 {
     /// <summary>
-    /// NIST StRD, nonlinear regression, Misra1d: y = b1 b2 x/(1 + b2 x) is a source on loads x with Vth = b1, Rth = 1/b2.
+    /// NIST StRD, nonlinear regression, Misra1d: y = b1 b2 x/(1 + b2 x) is a source on loads x with Vth = b1, Rth =
+    /// 1/b2.
     /// Certified values for equal, unknown uncertainties; NaN stands for the estimator's own start.
     /// </summary>
     [Theory]
@@ -51,7 +52,9 @@ public sealed class PublishedFitTests
         Assert.True(double.IsNaN(fit.PValue));
     }
 
-    /// <summary>Common practice: a load equal to Rth halves the voltage, ten times Rth loses 1/11, a hundred times 1/101.</summary>
+    /// <summary>
+    /// Common practice: a load equal to Rth halves the voltage, ten times Rth loses 1/11, a hundred times 1/101.
+    /// </summary>
     [Theory]
     [InlineData(1, 1.0 / 2)]
     [InlineData(10, 1.0 / 11)]
@@ -111,7 +114,8 @@ public sealed class PublishedFitTests
     public void A_problem_out_of_order_is_refused()
     {
         FitCase data = Case([1000, 100], [5, 4.5]);
-        Assert.Throws<ArgumentException>(() => SourceFitter.Fit((data with { Points = [.. data.Points.Reverse()] }).Problem));
+        Assert.Throws<ArgumentException>(() =>
+            SourceFitter.Fit((data with { Points = [.. data.Points.Reverse()] }).Problem));
         Assert.Throws<ArgumentException>(() => SourceFitter.Fit((data with { Points = [data.Points[0]] }).Problem));
     }
 

@@ -32,7 +32,8 @@ internal sealed class ReferenceFit
     }
 
     /// <summary>Minimises from a start; loads and common terms start at their stated values.</summary>
-    public (double Volt, double Ohm, double ChiSquared, Matrix<double> Covariance) Fit(double startVolt, double startOhm)
+    public (double Volt, double Ohm, double ChiSquared, Matrix<double> Covariance) Fit(double startVolt,
+        double startOhm)
     {
         int rows = source.Points.Length + parameters - 2;
         Vector<double> axis = Vector<double>.Build.Dense(rows, i => i);

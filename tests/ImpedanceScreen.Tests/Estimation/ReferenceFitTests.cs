@@ -10,7 +10,8 @@ public sealed class ReferenceFitTests
     [Fact]
     public void Agrees_with_an_independent_minimiser_over_random_problems() =>
         Gen.Int[0, int.MaxValue - 1].Sample(
-            seed => Compare(FitCase.Draw(new Random(seed), (seed & 1) * 5.0)), seed: "0N0XIzNsQ0O2", iter: 500, threads: 1);
+            seed => Compare(FitCase.Draw(new Random(seed), (seed & 1) * 5.0)), seed: "0N0XIzNsQ0O2", iter: 500,
+                threads: 1);
 
     [Fact]
     public void Agrees_where_one_load_is_used_twice_and_errors_are_coarse()
@@ -31,7 +32,8 @@ public sealed class ReferenceFitTests
         SourceFit fit = SourceFitter.Fit(drawn.Problem);
         Assert.True(fit.Converged);
         var reference = new ReferenceFit(drawn);
-        var (volt, ohm, chiSquared, covariance) = reference.Fit(fit.SourceVoltageVolt * 1.001, fit.ResistanceOhm * 1.01);
+        var (volt, ohm, chiSquared, covariance) = reference.Fit(fit.SourceVoltageVolt * 1.001,
+            fit.ResistanceOhm * 1.01);
         AssertClose(volt, fit.SourceVoltageVolt);
         AssertClose(ohm, fit.ResistanceOhm);
         AssertClose(chiSquared, fit.ChiSquared);

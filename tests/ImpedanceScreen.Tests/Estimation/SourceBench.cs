@@ -3,9 +3,8 @@ using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Limits;
 using ImpedanceScreen.Planning;
-using ImpedanceScreen.Reference;
 
-namespace ImpedanceScreen.Tests.Estimation;
+namespace ImpedanceScreen.Reference;
 
 /// <summary>A made-up job, and readings of a made-up source on it, drawn from what the job declares.</summary>
 internal sealed class SourceBench
@@ -57,11 +56,13 @@ internal sealed class SourceBench
         {
             double volt = step.Point.Sensed == Sensed.LoadReturn
                 ? draw.ReturnVolt
-                : Solve(source, draw, step.Point.Load is { } load ? draw.PathOhm[IndexOf(job, load)] : double.PositiveInfinity);
+                : Solve(source, draw, step.Point.Load is { } load ? draw.PathOhm[IndexOf(job,
+                    load)] : double.PositiveInfinity);
             bool? proved = step.Point.Load is null || job.Output.LoadCurrentProof != LoadCurrentProof.ContactReadback
                 ? null
                 : true;
-            taken.Add(new(step.Point, proved, [.. Enumerable.Range(0, step.Count).Select(_ => Reading(job, draw, volt))]));
+            taken.Add(new(step.Point, proved, [.. Enumerable.Range(0, step.Count).Select(_ => Reading(job, draw,
+                volt))]));
         }
 
         return taken;
@@ -71,7 +72,8 @@ internal sealed class SourceBench
         Read(job, ampere => vth - (rth * ampere));
 
     public static MeterReading Valid(double volt) =>
-        new(volt.ToString("E6", System.Globalization.CultureInfo.InvariantCulture), ReadingCondition.Valid, volt, Start);
+        new(volt.ToString("E6", System.Globalization.CultureInfo.InvariantCulture), ReadingCondition.Valid, volt,
+            Start);
 
     private MeterReading Reading(StateJob job, Draw draw, double volt)
     {
@@ -79,7 +81,8 @@ internal sealed class SourceBench
         return Valid(Math.Round(shown / job.Range.ResolutionVolt) * job.Range.ResolutionVolt);
     }
 
-    // The voltage where source (behind the lead) and load line meet, by bisection: sources here never rise with current.
+    // The voltage where source (behind the lead) and load line meet, by bisection: sources here never rise with
+    // current.
     private static double Solve(Func<double, double> source, Draw draw, double pathOhm)
     {
         double low = -100;

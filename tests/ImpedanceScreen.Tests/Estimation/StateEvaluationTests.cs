@@ -6,6 +6,7 @@ using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Planning;
 using ImpedanceScreen.Quantities;
 using ImpedanceScreen.Recording;
+using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Tests.Estimation;
 
@@ -72,7 +73,8 @@ public sealed class StateEvaluationTests
         BudgetTerm certificate = Assert.Single(estimate.Budget, line => line.Name == "certificate C-7");
         Assert.Equal(-100 * 6e-5, certificate.InternalResistanceOhm, 2e-4);
         Assert.Equal(
-            "branch, certificate C-7, lead, load L1000, load L220, load L3300, load L470, load temperature, meter gain, "
+            "branch, certificate C-7, lead, load L1000, load L220, load L3300, load L470, load temperature, "
+                + "meter gain, "
             + "meter input resistance, meter offset, noise, resolution",
             string.Join(", ", estimate.Budget.Select(line => line.Name).Order(StringComparer.Ordinal)));
     }
@@ -128,7 +130,8 @@ public sealed class StateEvaluationTests
     {
         Assert.All(PlannedUncertainty.Of(SourceBench.Job(), Temperature), value => Assert.True(double.IsFinite(value)));
         Assert.All(
-            PlannedUncertainty.Of(SourceBench.Job(vth: 0), Temperature), value => Assert.True(double.IsInfinity(value)));
+            PlannedUncertainty.Of(SourceBench.Job(vth: 0), Temperature),
+                value => Assert.True(double.IsInfinity(value)));
     }
 
     private static StateResult Evaluate(StateJob job, IReadOnlyList<LoadPointReadings> readings) =>

@@ -1,7 +1,7 @@
 using ImpedanceScreen.Bench;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Planning;
-using ImpedanceScreen.Tests.Estimation;
+using ImpedanceScreen.Reference;
 
 namespace ImpedanceScreen.Tests.Planning;
 

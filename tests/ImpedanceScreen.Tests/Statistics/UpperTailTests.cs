@@ -6,7 +6,8 @@ using MathNet.Numerics;
 namespace ImpedanceScreen.Tests.Statistics;
 
 /// <summary>
-/// Tail probabilities against published quantiles (NIST/SEMATECH e-Handbook of Statistical Methods 1.3.6.7, recomputed to
+/// Tail probabilities against published quantiles (NIST/SEMATECH e-Handbook of Statistical Methods 1.3.6.7,
+/// recomputed to
 /// 15 digits) and against MathNet.Numerics 5.0.0.
 /// </summary>
 public sealed class UpperTailTests
@@ -53,7 +54,8 @@ public sealed class UpperTailTests
         for (double value = 0.01; value < 600; value *= 1.7)
         {
             AssertRelative(
-                SpecialFunctions.GammaUpperRegularized(0.5 * degrees, 0.5 * value), UpperTail.ChiSquared(value, degrees), 1e-10);
+                SpecialFunctions.GammaUpperRegularized(0.5 * degrees, 0.5 * value), UpperTail.ChiSquared(value,
+                    degrees), 1e-10);
         }
     }
 
