@@ -3,6 +3,7 @@ using ImpedanceScreen.Recording;
 using ImpedanceScreen.Records.Bodies;
 using ImpedanceScreen.Records.Canonical;
 using ImpedanceScreen.Tests.Records.Shared;
+using Record = ImpedanceScreen.Recording.Record;
 
 namespace ImpedanceScreen.Tests.Records;
 
