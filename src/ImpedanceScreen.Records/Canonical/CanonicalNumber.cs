@@ -64,7 +64,7 @@ public static class CanonicalNumber
         return exponent switch
         {
             >= 0 and < 21 => at + Whole(digits, exponent, destination[at..]),
-            < 0 and >= -7 => at + Fraction(digits, exponent, destination[at..]),
+            < 0 and >= -6 => at + Fraction(digits, exponent, destination[at..]),
             _ => at + Scientific(digits, exponent, destination[at..]),
         };
     }
