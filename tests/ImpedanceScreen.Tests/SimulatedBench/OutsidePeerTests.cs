@@ -31,7 +31,7 @@ public sealed class OutsidePeerTests
             }
 
             SerialLink link = new(
-                "relays", near, 115200, LineParity.Even, 1, TimeSpan.FromSeconds(1), 0, EchoExpected: false);
+                "relays", near, 115200, LineParity.None, 1, TimeSpan.FromSeconds(1), 0, EchoExpected: false);
             await using SimulatedBenchHost bench = await SimulatedBenchHost.StartAsync(
                 Started.Options(new ExactBench { RelayLink = link }) with
                 {

@@ -11,7 +11,7 @@ UNIT = 7
 if sys.argv[1] == "tcp":
     client = ModbusTcpClient(sys.argv[2], port=int(sys.argv[3]), timeout=5)
 else:
-    client = ModbusSerialClient(sys.argv[2], baudrate=int(sys.argv[3]), parity="E", stopbits=1, timeout=5)
+    client = ModbusSerialClient(sys.argv[2], baudrate=int(sys.argv[3]), parity="N", stopbits=1, timeout=5)
 assert client.connect(), "no connection"
 
 
