@@ -7,12 +7,14 @@ namespace ImpedanceScreen.SimulatedBench.Meters;
 internal sealed class ScpiPattern
 {
     private readonly List<(string Long, string Short, bool IsOptional)> nodes = [];
+    private readonly bool isQuery;
 
     public ScpiPattern(string written)
     {
+        isQuery = written.EndsWith('?');
         bool optional = false;
         string mnemonic = "";
-        foreach (char letter in written + ":")
+        foreach (char letter in written.TrimEnd('?') + ":")
         {
             switch (letter)
             {
@@ -29,7 +31,12 @@ internal sealed class ScpiPattern
     }
 
     /// <summary>Whether a header is a way of writing this one.</summary>
-    public bool Matches(string header) => Matches(header.TrimStart(':').ToUpperInvariant().Split(':'), 0, 0);
+    public bool Matches(string header)
+    {
+        string mnemonics = isQuery && header.EndsWith('?') ? header[..^1] : header;
+        return isQuery == header.EndsWith('?')
+            && Matches(mnemonics.TrimStart(':').ToUpperInvariant().Split(':'), 0, 0);
+    }
 
     private void Add(string mnemonic, bool optional)
     {

@@ -56,7 +56,7 @@ public static class PopulationFileBinder
     private static DefectShare ReadDefect(MappingReader reader, LimitFile limits)
     {
         DefectKind kind = reader.Word("kind", [.. DefectNames.All.Select(entry => (entry.Name, entry.Kind))]);
-        string? sizeKey = DefectNames.All.First(entry => entry.Kind == kind).SizeKey;
+        string? sizeKey = reader.Bound("kind") ? DefectNames.All.First(entry => entry.Kind == kind).SizeKey : null;
         DefectShare defect = new(
             kind,
             reader.Number("weight", NumberRange.Positive),
