@@ -7,7 +7,8 @@ using ImpedanceScreen.SimulatedBench.Serving;
 
 namespace ImpedanceScreen.SimulatedBench;
 
-/// <summary>A running simulated bench: relay units, meters, boards and a handler behind the links of a fixture file.</summary>
+/// <summary>A running simulated bench: relay units, meters, boards and a handler behind the links of a fixture
+/// file.</summary>
 /// <remarks>Safe to use from any thread.</remarks>
 public sealed class SimulatedBenchHost : IAsyncDisposable
 {

@@ -57,5 +57,6 @@ public sealed record BoardPresented(long Ordinal, string Label) : BenchEvent;
 /// <summary>A board left the nest.</summary>
 /// <param name="Ordinal">Its number.</param>
 /// <param name="Label">Its serial number.</param>
-/// <param name="Bin"><c>pass</c>, <c>fail</c> or <c>retest</c> by the coils; <c>none</c> where it was taken by hand.</param>
+/// <param name="Bin"><c>pass</c>, <c>fail</c> or <c>retest</c> by the coils; <c>none</c> where it was taken by
+/// hand.</param>
 public sealed record BoardLifted(long Ordinal, string Label, string Bin) : BenchEvent;

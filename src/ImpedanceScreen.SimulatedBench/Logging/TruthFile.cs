@@ -4,7 +4,8 @@ using ImpedanceScreen.SimulatedBench.Populations;
 
 namespace ImpedanceScreen.SimulatedBench.Logging;
 
-/// <summary>Writes the truth about each board beside the records, so that escapes and false rejects can be counted.</summary>
+/// <summary>Writes the truth about each board beside the records, so that escapes and false rejects can be
+/// counted.</summary>
 /// <param name="limits">The limits that make a board bad.</param>
 /// <param name="writer">Where the JSON lines go.</param>
 public sealed class TruthFile(LimitFile limits, TextWriter writer)

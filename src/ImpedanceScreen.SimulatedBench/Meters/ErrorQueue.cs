@@ -1,6 +1,7 @@
 namespace ImpedanceScreen.SimulatedBench.Meters;
 
-/// <summary>The error queue (SCPI-1999 volume 2 section 21.8): first in, first out; an overflow replaces the last entry.</summary>
+/// <summary>The error queue (SCPI-1999 volume 2 section 21.8): first in, first out; an overflow replaces the last
+/// entry.</summary>
 internal sealed class ErrorQueue
 {
     private const int Longest = 20;

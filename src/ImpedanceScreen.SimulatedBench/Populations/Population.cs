@@ -2,7 +2,8 @@ using ImpedanceScreen.Files;
 
 namespace ImpedanceScreen.SimulatedBench.Populations;
 
-/// <summary>The boards that a simulated bench presents, and what only a simulation has to say about the bench.</summary>
+/// <summary>The boards that a simulated bench presents, and what only a simulation has to say about the
+/// bench.</summary>
 /// <param name="Source">The text this was bound from.</param>
 /// <param name="Product">Product, the same as in the limit file.</param>
 /// <param name="Surroundings">The bench's surroundings.</param>
@@ -34,7 +35,8 @@ public sealed record Surroundings(
 /// <param name="ResistanceDeviationOhm">Standard deviation of the internal resistance, Ω.</param>
 /// <param name="CapacitanceFarad">Capacitance across the output, F.</param>
 /// <param name="CurrentLimitAmpere">The output holds this current and no more, A; null where it does not limit.</param>
-/// <param name="SaturationVolt">The source voltage's magnitude cannot exceed this, V; null where nothing saturates.</param>
+/// <param name="SaturationVolt">The source voltage's magnitude cannot exceed this, V; null where nothing
+/// saturates.</param>
 public sealed record SourcePopulation(
     string Output,
     string State,
