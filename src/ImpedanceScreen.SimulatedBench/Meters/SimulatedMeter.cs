@@ -123,5 +123,5 @@ internal sealed class SimulatedMeter
 
     // NR3 (IEEE 488.2 section 8.7.4).
     private static string Format(double volt) =>
-        volt.ToString("+0.00000000E+00;-0.00000000E+00", CultureInfo.InvariantCulture);
+        (double.IsNegative(volt) ? "-" : "+") + Math.Abs(volt).ToString("0.00000000E+00", CultureInfo.InvariantCulture);
 }

@@ -60,9 +60,10 @@ internal static class ScreeningSession
         using IResultView view = ResultViews.Choose(request, job, status, single);
         status.Recorded += view.Add;
         using IHost host = BuildHost(request, job, serials, bench, store, status, log);
+        LotWorker worker = host.Services.GetServices<IHostedService>().OfType<LotWorker>().Single();
         long begun = TimeProvider.System.GetTimestamp();
         await host.RunAsync(cancellation);
-        LotEnd? end = host.Services.GetServices<IHostedService>().OfType<LotWorker>().Single().End;
+        LotEnd? end = worker.End;
         view.End(end, TimeProvider.System.GetElapsedTime(begun));
         log.Information("ended: {End}", end);
         return CodeOf(end, single ? view.LastDisposition : null);

@@ -1,5 +1,4 @@
 using System.Reflection;
-using ArchUnitNET.Fluent;
 using ArchUnitNET.Loader;
 using ArchUnitNET.xUnit;
 using ImpedanceScreen.Bench;
