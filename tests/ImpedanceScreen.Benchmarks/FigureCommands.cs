@@ -5,6 +5,7 @@ internal static class FigureCommands
 {
     public static IReadOnlyList<IFigureCommand> All { get; } =
     [
+        new BoardTimeCommand(),
         new FitFigure(),
         new RepliesCommand(),
     ];

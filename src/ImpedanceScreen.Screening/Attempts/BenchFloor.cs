@@ -9,35 +9,51 @@ namespace ImpedanceScreen.Screening.Attempts;
 /// </summary>
 public static class BenchFloor
 {
-    /// <summary>Adds the floor of every load point, the warm-up and the proof of discharge.</summary>
+    /// <summary>Declared contact times and settling of every load point, warm-up, and contact times of the proof of discharge.</summary>
     /// <param name="record">What was read.</param>
     /// <param name="job">What was declared.</param>
-    /// <param name="timeScale">Factor on declared waits and integration.</param>
-    /// <param name="turnaround">What a reading takes at the meter beyond its integration; not scaled.</param>
-    public static TimeSpan Of(BoardRecord record, ScreeningJob job, double timeScale, TimeSpan turnaround)
+    /// <param name="timeScale">Factor on declared waits.</param>
+    public static TimeSpan Waits(BoardRecord record, ScreeningJob job, double timeScale)
     {
         ArgumentNullException.ThrowIfNull(record);
         ArgumentNullException.ThrowIfNull(job);
-        TimeSpan contact = job.Fixture.RelayUnits.Max(unit => unit.Operate > unit.Release ? unit.Operate : unit.Release);
-        TimeSpan scaled = TimeSpan.Zero;
-        int readings = 0;
+        TimeSpan contact = Contact(job);
+        TimeSpan waits = TimeSpan.Zero;
         foreach (StateResult result in record.States)
         {
-            StateJob state = job.States.Single(
-                each => each.Output.Name == result.Output && each.State.Name == result.State);
-            int taken = result.Points.Sum(point => point.Readings.Count);
-            readings += taken;
-            scaled += (result.Points.Count * (contact + state.State.Settle)) + (taken * state.Meter.Integration);
+            waits += result.Points.Count * (contact + JobOf(result, job).State.Settle);
         }
 
-        if (job.Fixture.BoardSupply is { } supply)
-        {
-            List<StateJob> outputs = [.. job.States.DistinctBy(state => state.Output.Name)];
-            readings += outputs.Count;
-            scaled += supply.WarmUp + (outputs.Count * contact);
-            scaled += outputs.Aggregate(TimeSpan.Zero, (sum, state) => sum + state.Meter.Integration);
-        }
-
-        return (scaled * timeScale) + (readings * turnaround);
+        return (job.Fixture.BoardSupply is { } supply
+            ? waits + supply.WarmUp + (Outputs(job).Count() * contact)
+            : waits) * timeScale;
     }
+
+    /// <summary>Declared integration time of every reading, those that prove the discharge included.</summary>
+    /// <param name="record">What was read.</param>
+    /// <param name="job">What was declared.</param>
+    /// <param name="timeScale">Factor on integration times.</param>
+    public static TimeSpan Integration(BoardRecord record, ScreeningJob job, double timeScale)
+    {
+        ArgumentNullException.ThrowIfNull(record);
+        ArgumentNullException.ThrowIfNull(job);
+        IEnumerable<TimeSpan> points = record.States.Select(result =>
+            result.Points.Sum(point => point.Readings.Count) * JobOf(result, job).Meter.Integration);
+        IEnumerable<TimeSpan> discharge = job.Fixture.BoardSupply is null
+            ? []
+            : Outputs(job).Select(state => state.Meter.Integration);
+        return points.Concat(discharge).Aggregate(TimeSpan.Zero, (sum, each) => sum + each) * timeScale;
+    }
+
+    /// <summary>The longest operate or release time of any relay.</summary>
+    public static TimeSpan Contact(ScreeningJob job)
+    {
+        ArgumentNullException.ThrowIfNull(job);
+        return job.Fixture.RelayUnits.Max(unit => unit.Operate > unit.Release ? unit.Operate : unit.Release);
+    }
+
+    private static IEnumerable<StateJob> Outputs(ScreeningJob job) => job.States.DistinctBy(state => state.Output.Name);
+
+    private static StateJob JobOf(StateResult result, ScreeningJob job) =>
+        job.States.Single(each => each.Output.Name == result.Output && each.State.Name == result.State);
 }

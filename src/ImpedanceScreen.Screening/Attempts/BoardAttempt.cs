@@ -27,7 +27,7 @@ public sealed class BoardAttempt
     private readonly TimeLedger ledger;
     private readonly BenchWatch watch;
     private readonly LoadPointRunner runner;
-    private readonly List<StateResult> results = [];
+    private readonly List<Task<StateResult>> results = [];
     private readonly int pointsPlanned;
     private int pointsRead;
     private double? temperatureDegC;
@@ -60,7 +60,8 @@ public sealed class BoardAttempt
         }
 
         AllOpenOutcome allOpen = await bench.OpenAllAsync();
-        return new AttemptEnd(Draft(interruption, allOpen), allOpen, interruption);
+        StateResult[] evaluated = await Task.WhenAll(results);
+        return new AttemptEnd(Draft(evaluated, interruption, allOpen), allOpen, interruption);
     }
 
     private async Task MeasureAsync(CancellationToken cancellation)
@@ -72,7 +73,7 @@ public sealed class BoardAttempt
             Switched on = await ledger.SwitchingAsync(
                 bench.SwitchAsync(new SwitchOrder([], [supply.Relay]), cancellation));
             runner.WarmedUp = Deadline.After(
-                settings.Time, on.AcknowledgedTimestamp, (on.ContactTime + supply.WarmUp) * settings.TimeScale);
+                settings.Time, on.AcknowledgedTimestamp, on.ContactTime + (supply.WarmUp * settings.TimeScale));
         }
 
         foreach (IReadOnlyList<Lane> wave in Schedule.Waves(order.Job))
@@ -177,9 +178,14 @@ public sealed class BoardAttempt
         return true;
     }
 
-    private void Judge(Lane lane) =>
-        results.Add(StateEvaluation.Evaluate(
-            lane.State!, lane.Taken, Temperature, DiagnosticAlarm.TestsOf(order.Job), order.StartedAt));
+    // Off the bench loop: the next load point must not wait for arithmetic.
+    private void Judge(Lane lane)
+    {
+        StateJob state = lane.State!;
+        IReadOnlyList<LoadPointReadings> taken = lane.Taken;
+        results.Add(Task.Run(() => StateEvaluation.Evaluate(
+            state, taken, Temperature, DiagnosticAlarm.TestsOf(order.Job), order.StartedAt)));
+    }
 
     private Uncertain? Temperature =>
         temperatureDegC is { } measured && order.Job.Fixture.TemperatureSensor is { } sensor
@@ -219,9 +225,9 @@ public sealed class BoardAttempt
             order.Serial,
             Math.Min(1.0, (double)pointsRead / pointsPlanned));
 
-    private BoardRecord Draft(Exception? interruption, AllOpenOutcome allOpen)
+    private BoardRecord Draft(StateResult[] evaluated, Exception? interruption, AllOpenOutcome allOpen)
     {
-        (Disposition disposition, string cause) = BoardDisposition.Of(order, results, interruption, allOpen);
+        (Disposition disposition, string cause) = BoardDisposition.Of(order, evaluated, interruption, allOpen);
         return new BoardRecord(
             order.AttemptId,
             settings.Station,
@@ -240,7 +246,7 @@ public sealed class BoardAttempt
             order.Job.Fixture.Source.Sha256,
             [.. settings.Meters.Select(meter => new MeterUsed(meter.Key, meter.Value))],
             temperatureDegC,
-            [.. results],
+            evaluated,
             disposition,
             cause,
             ledger.Close());

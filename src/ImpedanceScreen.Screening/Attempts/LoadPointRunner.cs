@@ -106,7 +106,6 @@ internal sealed class LoadPointRunner(
         ContactCheck contacts = await ledger.SwitchingAsync(bench.CheckContactsAsync(cancellation));
         Deadline settled = Later(lane.Settled, WarmedUp);
         await ledger.SettlingAsync(watch.UntilAsync(settled, cancellation), TimeSpan.Zero);
-        await watch.PollIfDueAsync(cancellation);
         return Proof(contacts, point.Load);
     }
 
@@ -137,7 +136,7 @@ internal sealed class LoadPointRunner(
         Switched switched = await ledger.SwitchingAsync(
             bench.SwitchAsync(new SwitchOrder(before is null ? [] : [before], [sense]), cancellation));
         sensed[meter.Name] = sense;
-        return Deadline.After(time, switched.AcknowledgedTimestamp, switched.ContactTime * timeScale);
+        return Deadline.After(time, switched.AcknowledgedTimestamp, switched.ContactTime);
     }
 
     private async Task SwitchAsync(
@@ -145,9 +144,9 @@ internal sealed class LoadPointRunner(
     {
         Switched switched = await ledger.SwitchingAsync(
             bench.SwitchAsync(new SwitchOrder(open, close), cancellation));
-        lane.AtRest = Deadline.After(time, switched.AcknowledgedTimestamp, switched.ContactTime * timeScale);
-        TimeSpan settle = switched.ContactTime + lane.State!.State.Settle;
-        lane.Settled = Deadline.After(time, switched.AcknowledgedTimestamp, settle * timeScale);
+        lane.AtRest = Deadline.After(time, switched.AcknowledgedTimestamp, switched.ContactTime);
+        TimeSpan settle = switched.ContactTime + (lane.State!.State.Settle * timeScale);
+        lane.Settled = Deadline.After(time, switched.AcknowledgedTimestamp, settle);
     }
 
     private bool? Proof(ContactCheck contacts, Load? load)

@@ -8,6 +8,8 @@ namespace ImpedanceScreen.Screening.Serials;
 /// <param name="prompt">Called each time one is awaited.</param>
 public sealed class ScannedSerials(ChannelReader<string> lines, int? count, Action prompt) : ISerialSource
 {
+    private int taken;
+
     /// <inheritdoc/>
     public int? Count => count;
 
@@ -17,11 +19,17 @@ public sealed class ScannedSerials(ChannelReader<string> lines, int? count, Acti
     /// <inheritdoc/>
     public async ValueTask<string?> NextAsync(CancellationToken cancellation)
     {
+        if (taken >= count)
+        {
+            return null;
+        }
+
         prompt();
         while (await lines.WaitToReadAsync(cancellation))
         {
             if (lines.TryRead(out string? line) && line.Trim() is { Length: > 0 } serial)
             {
+                taken++;
                 return serial;
             }
         }

@@ -19,7 +19,7 @@ public sealed class BenchLog(BenchClock clock, TextWriter? writer)
     private readonly Queue<BenchEvent> kept = new();
 
     /// <summary>How bench files spell JSON.</summary>
-    internal static JsonSerializerOptions Json { get; } = new()
+    public static JsonSerializerOptions Json { get; } = new()
     {
         PropertyNamingPolicy = JsonNamingPolicy.SnakeCaseLower, Encoder = JavaScriptEncoder.UnsafeRelaxedJsonEscaping,
     };

@@ -72,16 +72,16 @@ internal static class LotCommand
         return (first, file) switch
         {
             (not null, not null) => throw new NotBegunException("--first-serial and --serials exclude each other"),
-            (not null, null) => new SerialChoice(Listed(limits, Range(first, count)), inNest, first),
-            (null, not null) => new SerialChoice(Listed(limits, FromFile(file)), inNest, null),
-            _ => new SerialChoice(new ScannedSerials(StandardInputLines(), count, Prompt), inNest, null),
+            (not null, null) => Listed(limits, Range(first, count), inNest),
+            (null, not null) => Listed(limits, FromFile(file), inNest),
+            _ => new SerialChoice(new ScannedSerials(StandardInputLines(), count, Prompt), inNest, count, null),
         };
     }
 
-    private static ListedSerials Listed(LimitFile limits, IReadOnlyList<string> serials)
+    private static SerialChoice Listed(LimitFile limits, IReadOnlyList<string> serials, string? inNest)
     {
         SerialChecks.Refuse(limits, serials);
-        return new ListedSerials(serials);
+        return new SerialChoice(new ListedSerials(serials), inNest, serials.Count, serials[0]);
     }
 
     private static IReadOnlyList<string> Range(string first, int? count)

@@ -5,5 +5,6 @@ namespace ImpedanceScreen.Station.Hosting;
 /// <summary>Where serial numbers come from, and what is known of the first boards.</summary>
 /// <param name="Source">The source.</param>
 /// <param name="BoardInNest">Serial number of a board that lies in the nest, where a person has read it.</param>
+/// <param name="Boards">How many boards there will be; null where not known.</param>
 /// <param name="FirstLabel">What the simulated boards are labelled from; null where it does not matter.</param>
-internal sealed record SerialChoice(ISerialSource Source, string? BoardInNest, string? FirstLabel);
+internal sealed record SerialChoice(ISerialSource Source, string? BoardInNest, int? Boards, string? FirstLabel);

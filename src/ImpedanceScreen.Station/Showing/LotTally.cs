@@ -61,7 +61,8 @@ internal sealed class LotTally(ScreeningJob job, double timeScale)
         TimeSpent spent = record.TimeSpent;
         double took = (spent.SwitchingMs + spent.SettlingMs + spent.IntegratingMs + spent.TalkingMs + spent.OtherMs) / 1e3;
         seconds.Add((float)took);
-        overFloor.Add((float)(took / BenchFloor.Of(record, job, timeScale, TimeSpan.Zero).TotalSeconds));
+        TimeSpan floor = BenchFloor.Waits(record, job, timeScale) + BenchFloor.Integration(record, job, timeScale);
+        overFloor.Add((float)(took / floor.TotalSeconds));
     }
 
     private static IEnumerable<string> CausesOf(StateResult state) =>

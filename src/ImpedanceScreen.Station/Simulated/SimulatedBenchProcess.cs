@@ -43,7 +43,7 @@ internal sealed class SimulatedBenchProcess : IAsyncDisposable
         ];
         Array.ForEach(arguments, start.ArgumentList.Add);
         AddOptional(start, "--first-serial", serials.FirstLabel);
-        AddOptional(start, "--boards", serials.Source.Count?.ToString(CultureInfo.InvariantCulture));
+        AddOptional(start, "--boards", serials.Boards?.ToString(CultureInfo.InvariantCulture));
         AddOptional(start, "--log", simulation.BenchLogPath);
         Process started = Process.Start(start)
             ?? throw new NotBegunException($"the simulated bench did not start: {start.FileName}");

@@ -75,7 +75,7 @@ public sealed record SwitchOrder(IReadOnlyList<Relay> Open, IReadOnlyList<Relay>
 
 /// <summary>A switching that was acknowledged and whose coils were read back as commanded.</summary>
 /// <param name="AcknowledgedTimestamp">Time-provider timestamp at the last coil's acknowledgement.</param>
-/// <param name="ContactTime">Longest declared operate or release time of what was switched last.</param>
+/// <param name="ContactTime">Longest declared operate or release time of what was switched last, shortened by the time scale of a simulated bench.</param>
 public readonly record struct Switched(long AcknowledgedTimestamp, TimeSpan ContactTime);
 
 /// <summary>Mirror contacts against commands.</summary>

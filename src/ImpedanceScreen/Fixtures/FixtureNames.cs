@@ -13,8 +13,6 @@ internal sealed class FixtureNames
 
     internal NameTable Banks { get; } = new("load bank");
 
-    internal NameTable Loads { get; } = new("load");
-
     internal NameTable Meters { get; } = new("meter");
 
     internal NameTable Outputs { get; } = new("output");

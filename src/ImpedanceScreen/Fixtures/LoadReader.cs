@@ -11,9 +11,11 @@ internal static class LoadReader
 
     internal static LoadBank Bank(MappingReader reader, FixtureNames names)
     {
+        // A limit file names loads without their bank: it fits benches with one bank and with one an output alike.
+        NameTable loads = new("load");
         LoadBank bank = new(
             names.Banks.Declare(reader),
-            reader.Mappings("loads", 1, load => Load(load, names)));
+            reader.Mappings("loads", 1, load => Load(load, names, loads)));
         if (reader.Bound("name", "loads"))
         {
             names.LoadsWithoutContact[bank.Name] = string.Join(
@@ -45,9 +47,9 @@ internal static class LoadReader
         return (on, due);
     }
 
-    private static Load Load(MappingReader reader, FixtureNames names)
+    private static Load Load(MappingReader reader, FixtureNames names, NameTable loads)
     {
-        string name = names.Loads.Declare(reader);
+        string name = loads.Declare(reader);
         Relay relay = reader.Mapping("relay", nested => RelayReader.Relay(nested, names));
         (DateOnly on, DateOnly due) = Dates(reader);
         Load load = new(

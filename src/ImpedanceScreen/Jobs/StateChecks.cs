@@ -30,12 +30,13 @@ internal static class StateChecks
     /// <summary>The plan's time under load against the allowed dwell; exchanges come on top of it.</summary>
     internal static void CheckDwell(StateJob job, FixtureFile fixture, JobMistakes mistakes)
     {
-        TimeSpan reading = job.Meter.Integration * job.State.ReadingsPerLoadPoint;
+        // While other outputs are loaded beside it, a load stays closed until the meter has read them too.
+        TimeSpan reading = job.Meter.Integration * job.State.ReadingsPerLoadPoint * fixture.OutputsLoadedAtOnce;
         TimeSpan total = TimeSpan.Zero;
         foreach (Load load in job.Loads)
         {
             RelayUnit unit = fixture.RelayUnits.First(item => item.Name == load.Relay.Unit);
-            total += unit.Operate + job.State.Settle + (job.LoadReturn is null ? reading : reading * 2);
+            total += unit.Operate + job.State.Settle + reading;
         }
 
         if (total > job.State.Allowed.Dwell)
