@@ -60,7 +60,7 @@ public sealed class BoardAttempt
         }
 
         AllOpenOutcome allOpen = await bench.OpenAllAsync();
-        StateResult[] evaluated = await Task.WhenAll(results);
+        StateResult[] evaluated = InOrderOfTheLimitFile(await Task.WhenAll(results));
         return new AttemptEnd(Draft(evaluated, interruption, allOpen), allOpen, interruption);
     }
 
@@ -191,6 +191,13 @@ public sealed class BoardAttempt
         temperatureDegC is { } measured && order.Job.Fixture.TemperatureSensor is { } sensor
             ? new Uncertain(measured, sensor.StandardUncertaintyDegC)
             : null;
+
+    // The schedule measures what shares a load return together; people read the order of the limit file.
+    private StateResult[] InOrderOfTheLimitFile(IReadOnlyList<StateResult> measured) =>
+    [
+        .. order.Job.States.SelectMany(state => measured.Where(result =>
+            result.Output == state.Output.Name && result.State == state.State.Name)),
+    ];
 
     private async Task DischargeAsync(BoardSupply supply, CancellationToken cancellation)
     {

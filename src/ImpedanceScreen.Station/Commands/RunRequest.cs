@@ -10,7 +10,11 @@ internal sealed record RunRequest(
     bool Json,
     string? LogFolder,
     SimulationRequest? Simulation,
-    double TimeScale);
+    double TimeScale)
+{
+    /// <summary>Where a simulated bench writes the truth about its boards: beside the records.</summary>
+    public string TruthPath => StorePath + ".truth.jsonl";
+}
 
 /// <summary>How the simulated bench is to be.</summary>
 internal sealed record SimulationRequest(string PopulationPath, ulong Seed, string? BenchLogPath);

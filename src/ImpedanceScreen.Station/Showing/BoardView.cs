@@ -3,12 +3,16 @@ using ImpedanceScreen.Decisions;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Lots;
 using Spectre.Console;
+using Spectre.Console.Rendering;
 
 namespace ImpedanceScreen.Station.Showing;
 
 /// <summary>One board: per output the estimate with its expanded uncertainty, limits, decision and cause.</summary>
 internal sealed class BoardView : IResultView
 {
+    // Below this width the guard band and the probability of conformity are left to the record.
+    private const int WidthOfAllColumns = 112;
+
     public Disposition? LastDisposition { get; private set; }
 
     public void Add(BoardRecord record)
@@ -16,11 +20,15 @@ internal sealed class BoardView : IResultView
         LastDisposition = record.Disposition;
         AnsiConsole.MarkupLineInterpolated(
             CultureInfo.InvariantCulture, $"[bold]{record.Product}[/] revision {record.Revision}, serial [bold]{record.Serial}[/], attempt {record.Attempt}");
-        Table table = new Table().Border(TableBorder.Horizontal)
-            .AddColumns("output", "quantity", "value ± U (95 %)", "limits", "guard band", "P(conforms)", "decision");
+        bool wide = AnsiConsole.Profile.Width >= WidthOfAllColumns;
+        string[] columns = wide
+            ? ["output", "quantity", "value ± U (95 %)", "limits", "decision", "guard band", "P(conforms)"]
+            : ["output", "quantity", "value ± U (95 %)", "limits", "decision"];
+        Table table = new Table().Border(TableBorder.Horizontal);
+        Array.ForEach(columns, column => table.AddColumn(new TableColumn(column).NoWrap()));
         foreach (StateResult state in record.States)
         {
-            AddRows(table, state);
+            AddRows(table, state, wide);
         }
 
         AnsiConsole.Write(table);
@@ -58,25 +66,29 @@ internal sealed class BoardView : IResultView
         _ => "ABORTED",
     };
 
-    private static void AddRows(Table table, StateResult state)
+    private static void AddRows(Table table, StateResult state, bool wide)
     {
         string place = $"{state.Output} {state.State}";
         if (state.Decisions.Count == 0)
         {
-            table.AddRow(new Text(place), new Text("-"), new Text("no estimate"), new Text(""), new Text(""), new Text(""), Mark(state.Decision));
+            table.AddRow(new Text(place), new Text("-"), new Text("no estimate"), new Text(""), Mark(state.Decision));
             return;
         }
 
         foreach (LimitDecision limit in state.Decisions)
         {
-            table.AddRow(
-                new Text(place),
-                new Text(QuantityText.Name(limit)),
-                new Text(QuantityText.Value(limit)),
-                new Text(QuantityText.Limits(limit)),
-                new Text(QuantityText.GuardBand(limit)),
-                new Text(QuantityText.Probability(limit.ConformityProbability)),
-                Mark(limit.Decision));
+            List<IRenderable> cells =
+            [
+                new Text(place), new Text(QuantityText.Name(limit)), new Text(QuantityText.Value(limit)),
+                new Text(QuantityText.Limits(limit)), Mark(limit.Decision),
+            ];
+            if (wide)
+            {
+                cells.Add(new Text(QuantityText.GuardBand(limit)));
+                cells.Add(new Text(QuantityText.Probability(limit.ConformityProbability)));
+            }
+
+            table.AddRow(cells);
             place = "";
         }
     }

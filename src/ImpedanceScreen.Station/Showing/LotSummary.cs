@@ -21,7 +21,9 @@ internal static class LotSummary
             AnsiConsole.MarkupLineInterpolated(
             CultureInfo.InvariantCulture, $"yield {Ratio(100.0 * tally.Passed / tally.Screened, "0.0")} %");
             AnsiConsole.MarkupLineInterpolated(
-            CultureInfo.InvariantCulture, $"median time a board {Ratio(tally.MedianSeconds, "0.00")} s, {Ratio(tally.MedianOverFloor, "0.000")} times the bench floor of declared waits and integration; {Ratio(elapsed.TotalSeconds, "0.0")} s in all");
+            CultureInfo.InvariantCulture, $"median time a board {Ratio(tally.MedianSeconds, "0.00")} s, {Ratio(tally.MedianOverFloor, "0.000")} times the bench floor");
+            AnsiConsole.MarkupLineInterpolated(
+                CultureInfo.InvariantCulture, $"(declared waits and integration); {Ratio(elapsed.TotalSeconds, "0.0")} s in all");
         }
 
         if (tally.Causes.Any())
@@ -34,6 +36,11 @@ internal static class LotSummary
             }
 
             AnsiConsole.Write(table);
+        }
+
+        if (tally.Truth is { } truth)
+        {
+            AnsiConsole.MarkupLineInterpolated(CultureInfo.InvariantCulture, $"{truth}");
         }
 
         AnsiConsole.MarkupLineInterpolated(

@@ -2,11 +2,12 @@ using ImpedanceScreen.Decisions;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Attempts;
+using ImpedanceScreen.Station.Simulated;
 
 namespace ImpedanceScreen.Station.Showing;
 
 /// <summary>Counts of a run: small whatever the number of boards, but for eight bytes a board of times.</summary>
-internal sealed class LotTally(ScreeningJob job, double timeScale)
+internal sealed class LotTally(ScreeningJob job, double timeScale, TruthCheck? truth)
 {
     private readonly Dictionary<(string Place, string Cause), int> causes = [];
     private readonly List<float> seconds = [];
@@ -35,8 +36,12 @@ internal sealed class LotTally(ScreeningJob job, double timeScale)
             .ThenBy(each => each.Place, StringComparer.Ordinal)
             .ThenBy(each => each.Cause, StringComparer.Ordinal);
 
+    /// <summary>Decisions against the truth; null on a real bench.</summary>
+    public string? Truth => truth?.Words();
+
     public void Add(BoardRecord record)
     {
+        truth?.Add(record);
         _ = record.Disposition switch
         {
             Disposition.Pass => Passed++,

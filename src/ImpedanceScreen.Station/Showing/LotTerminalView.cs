@@ -1,3 +1,4 @@
+using System.Globalization;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Lots;
 using ImpedanceScreen.Screening.Status;
@@ -16,6 +17,7 @@ internal sealed class LotTerminalView : IResultView
     private readonly StatusBoard status;
     private readonly CancellationTokenSource ended = new();
     private readonly Task drawing;
+    private readonly long begun = TimeProvider.System.GetTimestamp();
 
     public LotTerminalView(LotTally tally, RunRequest request, StatusBoard status)
     {
@@ -49,7 +51,7 @@ internal sealed class LotTerminalView : IResultView
     private Task DrawAsync() =>
         AnsiConsole.Progress()
             .AutoRefresh(false)
-            .Columns(new TaskDescriptionColumn { Alignment = Justify.Left }, new ProgressBarColumn(), new RemainingTimeColumn())
+            .Columns(new TaskDescriptionColumn { Alignment = Justify.Left }, new ProgressBarColumn(), new PercentageColumn())
             .StartAsync(async context =>
             {
                 ProgressTask bar = context.AddTask("starting", maxValue: status.Current.Planned ?? 1);
@@ -65,10 +67,10 @@ internal sealed class LotTerminalView : IResultView
                 context.Refresh();
             });
 
-    private static void Draw(ProgressTask bar, BenchStatus now)
+    private void Draw(ProgressTask bar, BenchStatus now)
     {
         string counts = $"pass {now.Passed}  fail {now.Failed}  retest {now.Retest}";
-        bar.Description = Markup.Escape($"{now.Serial ?? now.Lot} {now.Doing,-28}  {counts}");
+        bar.Description = Markup.Escape($"{now.Serial ?? now.Lot} {now.Doing,-28}  {counts}{ToGo(now)}");
         if (now.Planned is { } planned)
         {
             bar.MaxValue = planned;
@@ -78,5 +80,16 @@ internal sealed class LotTerminalView : IResultView
         {
             bar.IsIndeterminate = true;
         }
+    }
+
+    private string ToGo(BenchStatus now)
+    {
+        if (now.Planned is not { } planned || now.Screened == 0)
+        {
+            return "";
+        }
+
+        TimeSpan left = TimeProvider.System.GetElapsedTime(begun) / now.Screened * (planned - now.Screened);
+        return string.Create(CultureInfo.InvariantCulture, $"  {left:h\\:mm\\:ss} to go");
     }
 }

@@ -38,7 +38,7 @@ internal sealed class SimulatedBenchProcess : IAsyncDisposable
             "--population", simulation.PopulationPath,
             "--seed", simulation.Seed.ToString(CultureInfo.InvariantCulture),
             "--time-scale", request.TimeScale.ToString(CultureInfo.InvariantCulture),
-            "--truth", request.StorePath + ".truth.jsonl",
+            "--truth", request.TruthPath,
             "--free-ports",
         ];
         Array.ForEach(arguments, start.ArgumentList.Add);
