@@ -1,3 +1,5 @@
+using ImpedanceScreen.Benchmarks.Records;
+
 namespace ImpedanceScreen.Benchmarks;
 
 /// <summary>All figure commands.</summary>
@@ -7,5 +9,7 @@ internal static class FigureCommands
     [
         new FitFigure(),
         new RepliesCommand(),
+        new AppendCommand(),
+        new TamperCommand(),
     ];
 }
