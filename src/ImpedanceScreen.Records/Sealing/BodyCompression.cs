@@ -6,12 +6,15 @@ namespace ImpedanceScreen.Records.Sealing;
 /// <summary>
 /// Packs bodies with raw DEFLATE (RFC 1951) behind a preset dictionary, as <c>deflateSetDictionary</c> of zlib does: the
 /// dictionary is packed first and what it gave is left out. DEFLATE carries nothing from block to block but the window,
-/// so any stream that yields the dictionary may stand in its place when unpacking.
+/// so any stream that yields the dictionary may stand in its place when unpacking. The body's length stands before it
+/// (4 bytes, most significant first): a stream that was cut ends without a sign.
 /// </summary>
 internal static class BodyCompression
 {
     /// <summary>Largest body that is unpacked; a damaged store must not take all memory.</summary>
     public const int LongestBody = 16 * 1024 * 1024;
+
+    private const int LengthBytes = sizeof(int);
 
     // Measured on bodies of 8 outputs: see DEVELOPERS.md.
     private static readonly ZLibCompressionOptions Options = new() { CompressionLevel = 6 };
@@ -30,31 +33,39 @@ internal static class BodyCompression
             deflate.Write(body);
         }
 
-        return packed.GetBuffer().AsSpan(start, (int)packed.Length - start).ToArray();
+        // What the dictionary gave is longer than the length that takes its place.
+        Span<byte> kept = packed.GetBuffer().AsSpan(start - LengthBytes, (int)packed.Length - start + LengthBytes);
+        BinaryPrimitives.WriteInt32BigEndian(kept, body.Length);
+        return kept.ToArray();
     }
 
     /// <exception cref="InvalidDataException">The bytes are no packed body.</exception>
     public static byte[] Unpack(ReadOnlySpan<byte> packed)
     {
-        var whole = new byte[StoredDictionary.Length + packed.Length];
-        StoredDictionary.CopyTo(whole, 0);
-        packed.CopyTo(whole.AsSpan(StoredDictionary.Length));
-        using var inflate = new DeflateStream(new MemoryStream(whole), CompressionMode.Decompress);
-        using var body = new MemoryStream(32 * 1024);
-        Span<byte> chunk = stackalloc byte[4096];
-        int skip = PackingDictionary.Bytes.Length;
-        for (int read = inflate.Read(chunk); read > 0; read = inflate.Read(chunk))
+        if (packed.Length < LengthBytes
+            || BinaryPrimitives.ReadInt32BigEndian(packed) is var length && length is < 0 or > LongestBody)
         {
-            int left = Math.Min(skip, read);
-            skip -= left;
-            body.Write(chunk[left..read]);
-            if (body.Length > LongestBody)
-            {
-                throw new InvalidDataException("The stored bytes unpack to more than any body.");
-            }
+            throw new InvalidDataException("The stored bytes do not begin with the length of a body.");
         }
 
-        return body.ToArray();
+        ReadOnlySpan<byte> stream = packed[LengthBytes..];
+        var whole = new byte[StoredDictionary.Length + stream.Length];
+        StoredDictionary.CopyTo(whole, 0);
+        stream.CopyTo(whole.AsSpan(StoredDictionary.Length));
+        using var inflate = new DeflateStream(new MemoryStream(whole), CompressionMode.Decompress);
+        var unpacked = new byte[PackingDictionary.Bytes.Length + length];
+        try
+        {
+            inflate.ReadExactly(unpacked);
+        }
+        catch (EndOfStreamException exception)
+        {
+            throw new InvalidDataException("The stored bytes end before the body does.", exception);
+        }
+
+        return inflate.ReadByte() < 0
+            ? unpacked[PackingDictionary.Bytes.Length..]
+            : throw new InvalidDataException("The stored bytes unpack to more than the body.");
     }
 
     // One stored block, not the last: 3 bits of type in a byte, the length, its complement, the bytes.
