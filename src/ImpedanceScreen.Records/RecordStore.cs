@@ -60,7 +60,7 @@ public sealed class RecordStore : IRecordStore
             read = StationKey.Read(StorePath.KeyOf(path));
             opened = new StoreSession(path, read, seam);
             StoreRecord origin = StoreStart.RequireFit(opened.Connection, read, path, out ChainHead last);
-            return new RecordStore(opened, read, origin, last);
+            return new RecordStore(opened, read, origin, opened.Seen(last));
         }
         catch (Exception exception)
         {

@@ -1,3 +1,5 @@
+using ImpedanceScreen.Benchmarks.Records;
+
 namespace ImpedanceScreen.Benchmarks;
 
 /// <summary>All figure commands.</summary>
@@ -8,5 +10,7 @@ internal static class FigureCommands
         new BoardTimeCommand(),
         new FitFigure(),
         new RepliesCommand(),
+        new AppendCommand(),
+        new TamperCommand(),
     ];
 }

@@ -9,8 +9,11 @@ internal static class BoardBody
 {
     public static void Write(CanonicalWriter writer, BoardRecord board)
     {
+        BudgetInputs inputs = BudgetInputs.Of(board.States);
         writer.Integer("attempt", board.Attempt);
         writer.Text("attempt_id", board.AttemptId.ToString("D"));
+        writer.Name("budget_inputs");
+        inputs.Write(writer);
         writer.Text("cause", board.Cause);
         writer.Text("disposition", Words<Disposition>.Of(board.Disposition));
         writer.Utc("ended_utc", board.EndedAt);
@@ -27,7 +30,8 @@ internal static class BoardBody
         writer.Text("revision", board.Revision);
         writer.Text("serial", board.Serial);
         writer.Utc("started_utc", board.StartedAt);
-        writer.List("states", board.States, StateBody.Write);
+        writer.Name("states");
+        StateColumns.Write(writer, board.States, inputs);
         writer.Text("station", board.Station);
         writer.Number("temperature_degc", board.TemperatureDegC);
         writer.Name("time_ms");
@@ -52,10 +56,10 @@ internal static class BoardBody
         body.Text("fixture_sha256"),
         body.List("meters", meter => new MeterUsed(meter.Text("name"), meter.Text("idn"))),
         body.OptionalNumber("temperature_degc"),
-        body.List("states", StateBody.Read),
+        StateColumns.Read(body.Inner("states"), BudgetInputs.Read(body.Inner("budget_inputs"))),
         body.Word<Disposition>("disposition"),
         body.Text("cause"),
-        ReadTime(body.Object("time_ms") ?? throw new FormatException("'time_ms' is null.")));
+        ReadTime(body.Inner("time_ms")));
 
     private static Guid Identifier(string text) => Guid.ParseExact(text, "D");
 

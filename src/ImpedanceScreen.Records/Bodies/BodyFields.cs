@@ -30,14 +30,7 @@ internal static class BodyFields
     public static void Truth(this CanonicalWriter writer, string name, bool? value)
     {
         writer.Name(name);
-        if (value is { } known)
-        {
-            writer.Boolean(known);
-        }
-        else
-        {
-            writer.Null();
-        }
+        writer.TruthOrNull(value);
     }
 
     public static void Utc(this CanonicalWriter writer, string name, DateTimeOffset value) =>
@@ -47,6 +40,11 @@ internal static class BodyFields
         this CanonicalWriter writer, string name, IReadOnlyList<T> items, Action<CanonicalWriter, T> write)
     {
         writer.Name(name);
+        writer.Items(items, write);
+    }
+
+    public static void Items<T>(this CanonicalWriter writer, IReadOnlyList<T> items, Action<CanonicalWriter, T> write)
+    {
         writer.StartArray();
         foreach (T item in items)
         {
@@ -68,6 +66,18 @@ internal static class BodyFields
         }
     }
 
+    public static void TruthOrNull(this CanonicalWriter writer, bool? value)
+    {
+        if (value is { } known)
+        {
+            writer.Boolean(known);
+        }
+        else
+        {
+            writer.Null();
+        }
+    }
+
     public static string Text(this JsonElement body, string name) =>
         body.OptionalText(name) ?? throw new FormatException($"'{name}' is null.");
 
@@ -75,16 +85,11 @@ internal static class BodyFields
 
     public static int Integer(this JsonElement body, string name) => body.Member(name).GetInt32();
 
-    public static double Number(this JsonElement body, string name) => body.Member(name).NumberOrNaN();
-
     public static double? OptionalNumber(this JsonElement body, string name) =>
         body.Member(name) is { ValueKind: not JsonValueKind.Null } number ? number.GetDouble() : null;
 
     public static double NumberOrNaN(this JsonElement value) =>
         value.ValueKind == JsonValueKind.Null ? double.NaN : value.GetDouble();
-
-    public static bool? OptionalTruth(this JsonElement body, string name) =>
-        body.Member(name) is { ValueKind: not JsonValueKind.Null } truth ? truth.GetBoolean() : null;
 
     public static bool Truth(this JsonElement body, string name) => body.Member(name).GetBoolean();
 
@@ -106,8 +111,10 @@ internal static class BodyFields
         return list;
     }
 
-    public static JsonElement? Object(this JsonElement body, string name) =>
-        body.Member(name) is { ValueKind: not JsonValueKind.Null } inner ? inner : null;
+    public static JsonElement Inner(this JsonElement body, string name) =>
+        body.Member(name) is { ValueKind: JsonValueKind.Object } inner
+            ? inner
+            : throw new FormatException($"'{name}' is no object.");
 
     private static JsonElement Member(this JsonElement body, string name) =>
         body.TryGetProperty(name, out JsonElement value) ? value : throw new FormatException($"'{name}' is missing.");

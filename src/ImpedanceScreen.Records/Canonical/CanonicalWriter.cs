@@ -1,4 +1,3 @@
-using System.Buffers;
 using System.Globalization;
 using System.Text;
 
@@ -14,13 +13,14 @@ public sealed class CanonicalWriter
 
     private static readonly UTF8Encoding Strict = new(false, true);
 
-    private readonly ArrayBufferWriter<byte> buffer = new(16 * 1024);
+    private byte[] buffer = new byte[16 * 1024];
+    private int length;
     private readonly Stack<string?> outerNames = new();
     private string? lastName;
     private bool separate;
 
     /// <summary>What was written so far; valid until the next write.</summary>
-    public ReadOnlySpan<byte> Written => buffer.WrittenSpan;
+    public ReadOnlySpan<byte> Written => buffer.AsSpan(0, length);
 
     /// <summary>Begins an object.</summary>
     public void StartObject() => Open((byte)'{');
@@ -81,7 +81,7 @@ public sealed class CanonicalWriter
     public void Number(double value)
     {
         Separate();
-        buffer.Advance(CanonicalNumber.Format(value, buffer.GetSpan(CanonicalNumber.LongestLength)));
+        length += CanonicalNumber.Format(value, Free(CanonicalNumber.LongestLength));
     }
 
     /// <summary>Writes a whole number; beyond 2^53, where a JSON number is no longer exact, as text.</summary>
@@ -94,22 +94,22 @@ public sealed class CanonicalWriter
         }
 
         Separate();
-        value.TryFormat(buffer.GetSpan(20), out int length, default, CultureInfo.InvariantCulture);
-        buffer.Advance(length);
+        value.TryFormat(Free(20), out int digits, default, CultureInfo.InvariantCulture);
+        length += digits;
     }
 
     /// <summary>Writes true or false.</summary>
     public void Boolean(bool value)
     {
         Separate();
-        buffer.Write(value ? "true"u8 : "false"u8);
+        Put(value ? "true"u8 : "false"u8);
     }
 
     /// <summary>Writes null.</summary>
     public void Null()
     {
         Separate();
-        buffer.Write("null"u8);
+        Put("null"u8);
     }
 
     private void Open(byte bracket)
@@ -140,15 +140,31 @@ public sealed class CanonicalWriter
 
     private void Put(byte character)
     {
-        buffer.GetSpan(1)[0] = character;
-        buffer.Advance(1);
+        Free(1)[0] = character;
+        length++;
+    }
+
+    private void Put(ReadOnlySpan<byte> characters)
+    {
+        characters.CopyTo(Free(characters.Length));
+        length += characters.Length;
+    }
+
+    private Span<byte> Free(int count)
+    {
+        if (buffer.Length - length < count)
+        {
+            Array.Resize(ref buffer, Math.Max(2 * buffer.Length, length + count));
+        }
+
+        return buffer.AsSpan(length);
     }
 
     private void Literal(ReadOnlySpan<char> text)
     {
         if (!text.IsEmpty)
         {
-            Strict.GetBytes(text, buffer);
+            length += Strict.GetBytes(text, Free(Strict.GetMaxByteCount(text.Length)));
         }
     }
 
@@ -167,11 +183,11 @@ public sealed class CanonicalWriter
         };
         if (known.IsEmpty)
         {
-            buffer.Write("\\u00"u8);
-            ((int)character).TryFormat(buffer.GetSpan(2), out _, "x2", CultureInfo.InvariantCulture);
-            buffer.Advance(2);
+            Put("\\u00"u8);
+            ((int)character).TryFormat(Free(2), out _, "x2", CultureInfo.InvariantCulture);
+            length += 2;
         }
 
-        buffer.Write(known);
+        Put(known);
     }
 }

@@ -9,8 +9,11 @@ internal static class StoreSchema
     /// <summary>Version of the tables (<c>PRAGMA user_version</c>).</summary>
     public const int Version = 1;
 
-    /// <summary>Page size, bytes; chosen by measurement.</summary>
-    public const int PageSize = 16384;
+    /// <summary>
+    /// Page size, bytes; chosen by measurement (DEVELOPERS.md): a body fills a page or two of its own, and an append
+    /// writes ten small pages to the log instead of ten large ones.
+    /// </summary>
+    public const int PageSize = 2048;
 
     public const string Tables = """
         CREATE TABLE text (

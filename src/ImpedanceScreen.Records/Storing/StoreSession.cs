@@ -11,32 +11,29 @@ namespace ImpedanceScreen.Records.Storing;
 internal sealed class StoreSession(string path, StationKey key, AppendSeam seam) : IDisposable
 {
     private StoreConnection? connection;
+    private long seen;
 
     /// <summary>The connection, opened where there is none.</summary>
     public StoreConnection Connection => connection ??= StoreConnection.Open(path);
+
+    /// <summary>The head as last seen: a record of this process that is looked for stands behind it.</summary>
+    public ChainHead Seen(ChainHead head)
+    {
+        seen = head.Sequence;
+        return head;
+    }
 
     /// <summary>Appends a sealed record; a commit of unknown outcome is cleared up by looking for the record.</summary>
     /// <exception cref="StoreFaultException">It is not in the store, or nobody can say.</exception>
     public ChainHead Append(SealedRecord record)
     {
-        long before;
         try
         {
-            before = Appender.ReadHead(Connection).Sequence;
-        }
-        catch (Exception exception) when (IsStoreTrouble(exception))
-        {
-            Close();
-            throw Fault(exception);
-        }
-
-        try
-        {
-            return new Appender(Connection, key, seam).Append(record);
+            return Seen(new Appender(Connection, key, seam).Append(record));
         }
         catch (Exception first) when (IsStoreTrouble(first))
         {
-            return Recover(record, before);
+            return Recover(record);
         }
     }
 
@@ -47,13 +44,13 @@ internal sealed class StoreSession(string path, StationKey key, AppendSeam seam)
     public static bool IsStoreTrouble(Exception exception) =>
         exception is SqliteException or IOException or UnauthorizedAccessException;
 
-    private ChainHead Recover(SealedRecord record, long before)
+    private ChainHead Recover(SealedRecord record)
     {
         Close();
         try
         {
             // Looked for on a new connection: what it sees is what the disk holds. Absent: the same bytes once more.
-            return Find(record, before) ?? new Appender(Connection, key, seam).Append(record);
+            return Seen(Find(record) ?? new Appender(Connection, key, seam).Append(record));
         }
         catch (Exception second) when (IsStoreTrouble(second))
         {
@@ -62,7 +59,7 @@ internal sealed class StoreSession(string path, StationKey key, AppendSeam seam)
         }
     }
 
-    private ChainHead? Find(SealedRecord record, long before)
+    private ChainHead? Find(SealedRecord record)
     {
         using SqliteDataReader reader = record.Board is { } board
             ? Connection.Statement(
@@ -70,7 +67,7 @@ internal sealed class StoreSession(string path, StationKey key, AppendSeam seam)
                 RecordColumns.Bytes(board.AttemptId)).ExecuteReader()
             : Connection.Statement(
                 "SELECT sequence, link, body_hash FROM record WHERE sequence > $a AND body_hash = $b",
-                before,
+                seen,
                 record.BodyHash).ExecuteReader();
         if (!reader.Read())
         {

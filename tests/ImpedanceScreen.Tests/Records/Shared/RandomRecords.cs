@@ -16,7 +16,7 @@ public sealed class RandomRecords(int seed)
 
     private static readonly string[] Inputs =
     [
-        "load R2k2", "meter gain", "load R4k7", "noise", "load R10k", "meter offset", "lead", "branch",
+        "certificate HL-26-0417", "load R2k2", "meter gain", "load R4k7", "noise", "load R10k", "meter offset", "lead", "branch",
         "load temperature", "resolution", "meter input resistance",
     ];
 
@@ -35,8 +35,8 @@ public sealed class RandomRecords(int seed)
         StateResult[] states = [.. Enumerable.Range(1, Outputs).Select(State)];
         bool fail = states.Any(state => state.Decision == Decision.Fail);
         return new BoardRecord(
-            RandomId(), "line-3", string.Create(CultureInfo.InvariantCulture, $"T6-{made:D6}"), 1,
-            random.Next(20) == 0 ? RandomId() : null, "Tern-6", "C", lot, "mk", "tern-6-a", started,
+            AttemptId(started), "line-3", string.Create(CultureInfo.InvariantCulture, $"T6-{made:D6}"), 1,
+            random.Next(20) == 0 ? AttemptId(started.AddDays(-1)) : null, "Tern-6", "C", lot, "mk", "tern-6-a", started,
             started.AddMilliseconds(11_000 + random.Next(800)), "0.1.0", LimitText.Sha256, FixtureText.Sha256,
             [new MeterUsed("dmm", "EXAMPLE,6-DIGIT,00123456,1.04")], Digits(23 + random.NextDouble(), 3), states,
             fail ? Disposition.Fail : Disposition.Pass, fail ? "out3 high: Rth above its limit" : string.Empty,
@@ -98,22 +98,28 @@ public sealed class RandomRecords(int seed)
                 input.StartsWith("meter", StringComparison.Ordinal) ? InputDistribution.Rectangular : InputDistribution.Normal,
                 Digits((random.Next(2) - 0.5) * 1e-5 * Spread() / (at + 1), 4),
                 Digits((random.Next(2) - 0.5) * 0.1 * Spread() / (at + 1), 4),
-                input == "noise" ? 60 : double.PositiveInfinity)),
+                input == "noise" ? 60 : double.PositiveInfinity))
+                .OrderByDescending(term => Math.Abs(term.InternalResistanceOhm)),
         ]);
 
     private LimitDecision Limit(Quantity quantity, double value, double? min, double? max, double? rated)
     {
-        double expanded = Digits(Math.Abs(value) * 1e-4 * Spread(), 9);
-        return new LimitDecision(quantity, rated, Digits(value, 9), expanded, min, max, 1, expanded, 1, Decision.Pass);
+        double expanded = Math.Abs(value) * 1e-4 * Spread();
+        return new LimitDecision(
+            quantity, rated, Digits(value, 9), Digits(expanded, 9), min, max, rated is null ? 1 : 0,
+            rated is null ? Digits(expanded * 1.003 * Spread(), 9) : 0, 1, Decision.Pass);
     }
 
     private double Spread() => 0.5 + random.NextDouble();
 
-    private Guid RandomId()
+    // Version 7 of RFC 9562, as the station makes them, so that they come in the order of time.
+    private Guid AttemptId(DateTimeOffset at)
     {
         Span<byte> bytes = stackalloc byte[16];
-        random.NextBytes(bytes);
-        return new Guid(bytes);
+        Guid.CreateVersion7(at).TryWriteBytes(bytes, bigEndian: true, out _);
+        random.NextBytes(bytes[9..]);
+        (bytes[6], bytes[7], bytes[8]) = (0x70, 0, 0x80);
+        return new Guid(bytes, bigEndian: true);
     }
 
     private static double Digits(double value, int digits) => double.Parse(

@@ -110,8 +110,6 @@ internal sealed class Tamperer(SqliteConnection connection, Random random, long 
         int at = random.Next(bytes.Length);
         bytes[at] ^= (byte)(1 + random.Next(255));
         Run($"UPDATE record SET {column} = $bytes WHERE sequence = {sequence}", bytes);
-
-        // Record 0 holds the station's name only; its key then fails at no other place than itself.
         return new Tampering($"byte {at} of {column} of record {sequence}", Name(sequence));
     }
 
