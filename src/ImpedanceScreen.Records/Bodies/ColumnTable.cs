@@ -14,7 +14,7 @@ internal sealed class ColumnTable
     {
         foreach (JsonProperty column in columns.EnumerateObject())
         {
-            cells.Add(column.Name, [.. column.Value.EnumerateArray()]);
+            cells[column.Name] = [.. column.Value.EnumerateArray()];
         }
 
         RequireEqualLength(lead);

@@ -8,6 +8,8 @@ public static class CanonicalNumber
     /// <summary>Longest text of any number: sign, leading zeros or 21 digits, exponent.</summary>
     public const int LongestLength = 32;
 
+    private const double LargestPlainWhole = 1e15;
+
     /// <summary>Writes a number as ASCII. A negative zero becomes <c>0</c>, as RFC 8785 demands.</summary>
     /// <param name="value">A finite number.</param>
     /// <param name="destination">At least <see cref="LongestLength"/> bytes.</param>
@@ -24,6 +26,13 @@ public static class CanonicalNumber
         {
             destination[0] = (byte)'0';
             return 1;
+        }
+
+        // Whole numbers of at most 15 digits, the commonest by far, need no search for the shortest digits.
+        if (Math.Abs(value) < LargestPlainWhole && (long)value is var whole && whole == value)
+        {
+            whole.TryFormat(destination, out int digits, default, CultureInfo.InvariantCulture);
+            return digits;
         }
 
         // The runtime's shortest round-trip digits are ECMAScript's; only the layout with an exponent differs.

@@ -42,8 +42,10 @@ internal sealed class AppendCommand : IFigureCommand
         string own = Path.Combine(folder, "own.store");
         string raw = Path.Combine(folder, "raw.store");
         double sealing = double.PositiveInfinity;
-        var ownSeconds = new List<double>();
-        var rawSeconds = new List<double>();
+
+        // The best block of each: a busy machine adds time, it never takes any away.
+        double ownSeconds = double.PositiveInfinity;
+        double rawSeconds = double.PositiveInfinity;
         RecordStore.Create(raw, "line-3", "0.1.0", TimeProvider.System);
         RecordStore.Create(own, "line-3", "0.1.0", TimeProvider.System);
         await using (RecordStore store = RecordStore.Open(own))
@@ -63,10 +65,11 @@ internal sealed class AppendCommand : IFigureCommand
                     await attempts.BeginAttemptAsync(RandomRecords.StartOf(board));
                 }
 
-                // The best block: a busy machine adds time, it never takes any away.
                 SealedRecord[] ready = Seal(boards, out double milliseconds);
                 sealing = Math.Min(sealing, milliseconds);
-                await TakeTurnsAsync(store, inserts, ready, ownSeconds, rawSeconds);
+                (double ownMedian, double rawMedian) = await TakeTurnsAsync(store, inserts, ready);
+                ownSeconds = Math.Min(ownSeconds, ownMedian);
+                rawSeconds = Math.Min(rawSeconds, rawMedian);
                 foreach (BoardRecord board in boards)
                 {
                     await store.FinishAttemptAsync(board.AttemptId);
@@ -77,8 +80,8 @@ internal sealed class AppendCommand : IFigureCommand
         }
 
         return Report(
-            Median(rawSeconds) / Median(ownSeconds),
-            Median(ownSeconds),
+            rawSeconds / ownSeconds,
+            ownSeconds,
             sealing,
             new FileInfo(own).Length / (double)count,
             Audit.Run(own, null, cancellation).IsClean);
@@ -86,16 +89,23 @@ internal sealed class AppendCommand : IFigureCommand
 
     private static SealedRecord[] Seal(BoardRecord[] boards, out double milliseconds)
     {
-        long start = Stopwatch.GetTimestamp();
         SealedRecord[] ready = [.. boards.Select(SealedRecord.Seal)];
+        long start = Stopwatch.GetTimestamp();
+        foreach (BoardRecord board in boards)
+        {
+            SealedRecord.Seal(board);
+        }
+
         milliseconds = Stopwatch.GetElapsedTime(start).TotalMilliseconds / boards.Length;
         return ready;
     }
 
     // Record by record, so that what else the machine and its disk do hits both alike; who begins changes each time.
-    private static async Task TakeTurnsAsync(
-        RecordStore store, RawInserts inserts, SealedRecord[] ready, List<double> ownSeconds, List<double> rawSeconds)
+    private static async Task<(double OwnMedian, double RawMedian)> TakeTurnsAsync(
+        RecordStore store, RawInserts inserts, SealedRecord[] ready)
     {
+        var ownSeconds = new List<double>();
+        var rawSeconds = new List<double>();
         for (int at = 0; at < ready.Length; at++)
         {
             for (int turn = 0; turn < 2; turn++)
@@ -113,12 +123,14 @@ internal sealed class AppendCommand : IFigureCommand
                 }
             }
         }
+
+        return (Median(ownSeconds), Median(rawSeconds));
     }
 
     private static int Report(double ratio, double ownSeconds, double sealingMs, double bytes, bool clean)
     {
         Console.WriteLine(string.Create(CultureInfo.InvariantCulture, $"""
-            append, durable        {1e3 * ownSeconds:F3} ms (median), {1 / ownSeconds:F0} a second
+            append, durable        {1e3 * ownSeconds:F3} ms (median of the best {Block}), {1 / ownSeconds:F0} a second
             over raw inserts       {ratio:F3} of their rate (wanted: at least {RatioWanted})
             sealing                {sealingMs:F3} ms (mean of the best {Block}; wanted: at most {SealingWantedMs})
             file                   {bytes:F0} bytes a board (wanted: at most {BytesWanted})
