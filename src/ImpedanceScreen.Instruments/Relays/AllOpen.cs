@@ -91,7 +91,7 @@ internal sealed class AllOpen(
     }
 
     private static string NotConfirmed(UnitRelays unit, string why) =>
-        $"Relays of unit '{unit.Unit.Unit.Name}' are not confirmed open: {why} Switch the fixture's supply off.";
+        $"unit '{unit.Unit.Unit.Name}' is not confirmed open: {why}";
 
     private async Task<string> ProveContactsAsync(UnitRelays unit, CancellationToken cancellation)
     {

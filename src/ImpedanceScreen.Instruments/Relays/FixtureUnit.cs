@@ -83,8 +83,7 @@ internal sealed class FixtureUnit(RelayUnit unit, Link link, IModbusClient clien
             IsFailing = true;
             throw new BenchFaultException(
                 BenchFault.FixtureLost,
-                $"Relay unit '{unit.Name}' (unit {unit.UnitAddress} on link '{link.Name}') did not do as told: "
-                + $"{e.Message} Look at its power, its cable and its address.",
+                $"Relay unit '{unit.Name}' (unit {unit.UnitAddress}) did not do as told: {e.Message}",
                 e);
         }
     }

@@ -6,9 +6,11 @@ namespace ImpedanceScreen.Screening.Attempts;
 /// <param name="Meters">Identity of each meter by its name in the fixture file.</param>
 /// <param name="TimeScale">Factor on settle, warm-up and contact times: 1 on a real bench, smaller on a simulated one.</param>
 /// <param name="Time">Clock.</param>
+/// <param name="Arithmetic">Where results are computed.</param>
 public sealed record BenchSettings(
     string Station,
     string ProgramVersion,
     IReadOnlyDictionary<string, string> Meters,
     double TimeScale,
-    TimeProvider Time);
+    TimeProvider Time,
+    TaskScheduler Arithmetic);

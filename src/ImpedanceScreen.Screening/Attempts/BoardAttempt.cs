@@ -183,8 +183,12 @@ public sealed class BoardAttempt
     {
         StateJob state = lane.State!;
         IReadOnlyList<LoadPointReadings> taken = lane.Taken;
-        results.Add(Task.Run(() => StateEvaluation.Evaluate(
-            state, taken, Temperature, DiagnosticAlarm.TestsOf(order.Job), order.StartedAt)));
+        results.Add(Task.Factory.StartNew(
+            () => StateEvaluation.Evaluate(
+                state, taken, Temperature, DiagnosticAlarm.TestsOf(order.Job), order.StartedAt),
+            CancellationToken.None,
+            TaskCreationOptions.DenyChildAttach,
+            settings.Arithmetic));
     }
 
     private Uncertain? Temperature =>

@@ -45,7 +45,8 @@ public sealed class LotRunner
         serialPattern = SerialNumber.Compile(order.Job.Limits.SerialPattern);
         handler = new HandlerDialogue(bench, order.Job.Fixture, run.Time);
         settings = new BenchSettings(
-            store.Station, run.ProgramVersion, new Dictionary<string, string>(), run.TimeScale, run.Time);
+            store.Station, run.ProgramVersion, new Dictionary<string, string>(), run.TimeScale, run.Time,
+            run.Arithmetic);
     }
 
     /// <summary>Works the lot off. However it ends, all relays were told to open.</summary>
@@ -75,11 +76,17 @@ public sealed class LotRunner
         {
             end = await HoldAsync(e.Message);
         }
+        catch
+        {
+            // A defect of this program: nothing is known any more, so the bench is left safe before it is told.
+            await bench.OpenAllAsync();
+            throw;
+        }
 
         AllOpenOutcome allOpen = await bench.OpenAllAsync();
         if (!allOpen.Confirmed && end.Kind != LotEndKind.OnHold)
         {
-            end = await HoldAsync($"relays not proved open: {allOpen.Alarm}");
+            end = await HoldAsync(NotProvedOpen(allOpen).Message);
         }
 
         status.Publish(end.Kind == LotEndKind.Complete ? Activity.Ended : Activity.OnHold, end.Words);
@@ -113,7 +120,7 @@ public sealed class LotRunner
         BenchStart start = await bench.StartAsync(cancellation);
         if (!start.AllOpen.Confirmed)
         {
-            throw new HoldException($"relays not proved open: {start.AllOpen.Alarm}");
+            throw NotProvedOpen(start.AllOpen);
         }
 
         settings = settings with { Meters = start.Meters };
@@ -180,7 +187,7 @@ public sealed class LotRunner
                     "{Serial} is no serial number of {Product} (pattern {Pattern}): scan it again",
                     serial, order.Job.Limits.Product, order.Job.Limits.SerialPattern);
             }
-            else if (order.Serials.ReadsTheBoard || !await HasResultInThisLotAsync(serial))
+            else if (order.Serials.ReadsTheBoard || !await HasResultAsync(store, order.Job.Limits.Product, serial, order.Lot))
             {
                 return serial;
             }
@@ -189,10 +196,14 @@ public sealed class LotRunner
         return null;
     }
 
-    private async Task<bool> HasResultInThisLotAsync(string serial) =>
-        order.Lot is { } lot
-        && (await store.AttemptsAsync(order.Job.Limits.Product, serial))
-            .Any(attempt => attempt.Lot == lot && attempt.Disposition != Disposition.Aborted);
+    /// <summary>Whether a serial number has a record in a lot that is not an aborted attempt.</summary>
+    public static async Task<bool> HasResultAsync(IRecordStore store, string product, string serial, string? lot)
+    {
+        ArgumentNullException.ThrowIfNull(store);
+        return lot is not null
+            && (await store.AttemptsAsync(product, serial))
+                .Any(attempt => attempt.Lot == lot && attempt.Disposition != Disposition.Aborted);
+    }
 
     private async Task ScreenAsync(string serial, CancellationToken cancellation)
     {
@@ -261,7 +272,7 @@ public sealed class LotRunner
         cancellation.ThrowIfCancellationRequested();
         if (!end.AllOpen.Confirmed)
         {
-            throw new HoldException($"relays not proved open: {end.AllOpen.Alarm}");
+            throw NotProvedOpen(end.AllOpen);
         }
 
         if (end.Interruption is BenchFaultException fault)
@@ -274,6 +285,9 @@ public sealed class LotRunner
             await StartBenchAsync(cancellation);
         }
     }
+
+    private static HoldException NotProvedOpen(AllOpenOutcome outcome) =>
+        new($"relays not proved open: {outcome.Alarm} Switch the coil supply off by hand before you touch the board.");
 
     private async Task FinishAsync()
     {

@@ -22,6 +22,8 @@ internal static class ServeCommand
 
     private static async Task<int> ServeAsync(ServeRequest request, CancellationToken cancellation)
     {
+        // Signals are heeded only once this method has given control back: no address is told before.
+        await Task.Yield();
         try
         {
             using TextWriter? truth = BenchFiles.Create(request.TruthPath);

@@ -22,7 +22,7 @@ internal static class BoardCommand
                 job =>
                 {
                     SerialChecks.Refuse(job.Limits, [number]);
-                    return new SerialChoice(new ListedSerials([]), number, 1, number);
+                    return new SerialChoice(new ListedSerials([]), number, 1, [number]);
                 },
                 single: true,
                 cancellation);

@@ -74,14 +74,14 @@ internal static class LotCommand
             (not null, not null) => throw new NotBegunException("--first-serial and --serials exclude each other"),
             (not null, null) => Listed(limits, Range(first, count), inNest),
             (null, not null) => Listed(limits, FromFile(file), inNest),
-            _ => new SerialChoice(new ScannedSerials(StandardInputLines(), count, Prompt), inNest, count, null),
+            _ => new SerialChoice(new ScannedSerials(StandardInputLines(), count, Prompt), inNest, count, []),
         };
     }
 
     private static SerialChoice Listed(LimitFile limits, IReadOnlyList<string> serials, string? inNest)
     {
         SerialChecks.Refuse(limits, serials);
-        return new SerialChoice(new ListedSerials(serials), inNest, serials.Count, serials[0]);
+        return new SerialChoice(new ListedSerials(serials), inNest, serials.Count, serials);
     }
 
     private static IReadOnlyList<string> Range(string first, int? count)

@@ -33,7 +33,7 @@ internal static class ScreeningSession
         ScreeningJob job = JobFiles.Load(request.LimitsPath, request.FixturePath);
         SerialChoice serials = choose(job);
         await using Serilog.Core.Logger log = StationLog.Make(StationLog.PathFor(request.StorePath, request.LogFolder));
-        await using SimulatedBenchProcess? simulated = await StartSimulatedAsync(request, serials, cancellation);
+        await using SimulatedBenchProcess? simulated = await StartSimulatedAsync(request, job, serials, cancellation);
         job = simulated is null ? job : job with { Fixture = simulated.Rewire(job.Fixture) };
         using FixtureLock held = FixtureLock.Take(job.Fixture);
         using var loggers = new Serilog.Extensions.Logging.SerilogLoggerFactory(log);
@@ -81,17 +81,36 @@ internal static class ScreeningSession
         builder.Services.AddSingleton(store);
         builder.Services.AddSingleton(status);
         builder.Services.AddSingleton(new LotOrder(job, request.Lot, request.Operator, serials.Source, serials.BoardInNest));
-        builder.Services.AddSingleton(new RunSettings(ProgramVersion, request.TimeScale, TimeProvider.System));
+        builder.Services.AddSingleton(new RunSettings(
+            ProgramVersion, request.TimeScale, TimeProvider.System, TaskScheduler.Default));
         builder.Services.AddSingleton<LotRunner>();
         builder.Services.AddHostedService<LotWorker>();
         return builder.Build();
     }
 
     private static async Task<SimulatedBenchProcess?> StartSimulatedAsync(
-        RunRequest request, SerialChoice serials, CancellationToken cancellation) =>
+        RunRequest request, ScreeningJob job, SerialChoice serials, CancellationToken cancellation) =>
         request.Simulation is { } simulation
-            ? await SimulatedBenchProcess.StartAsync(request, simulation, serials, cancellation)
+            ? await SimulatedBenchProcess.StartAsync(
+                request, simulation, await StillToComeAsync(request, job, serials), serials.Boards, cancellation)
             : null;
+
+    // A lot that is taken up again goes on with the boards it has not screened: so does its simulated handler.
+    private static async Task<IReadOnlyList<string>> StillToComeAsync(
+        RunRequest request, ScreeningJob job, SerialChoice serials)
+    {
+        await using IRecordStore store = OpenStore(request.StorePath);
+        List<string> left = [];
+        foreach (string serial in serials.Listed)
+        {
+            if (!await LotRunner.HasResultAsync(store, job.Limits.Product, serial, request.Lot))
+            {
+                left.Add(serial);
+            }
+        }
+
+        return left;
+    }
 
     private static RecordStore OpenStore(string path)
     {

@@ -5,7 +5,7 @@ using Serilog.Formatting.Compact;
 
 namespace ImpedanceScreen.Station.Hosting;
 
-/// <summary>The log: every event to a rolling file in compact JSON, warnings and worse to standard error.</summary>
+/// <summary>The log: every event to a rolling file in compact JSON, errors to standard error too.</summary>
 internal static class StationLog
 {
     private const long FileBytesMax = 64L * 1024 * 1024;
@@ -26,7 +26,7 @@ internal static class StationLog
                 new CompactJsonFormatter(), path, rollingInterval: RollingInterval.Day, fileSizeLimitBytes: FileBytesMax,
                 rollOnFileSizeLimit: true, retainedFileCountLimit: 31)
             .WriteTo.Console(
-                LogEventLevel.Warning, standardErrorFromLevel: LogEventLevel.Verbose,
+                LogEventLevel.Error, standardErrorFromLevel: LogEventLevel.Verbose,
                 formatProvider: CultureInfo.InvariantCulture,
                 outputTemplate: "{Level:u4} {Message:lj}{NewLine}")
             .CreateLogger();

@@ -3,7 +3,6 @@ using System.Globalization;
 using System.Text.Json;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Station.Commands;
-using ImpedanceScreen.Station.Hosting;
 
 namespace ImpedanceScreen.Station.Simulated;
 
@@ -28,7 +27,8 @@ internal sealed class SimulatedBenchProcess : IAsyncDisposable
 
     /// <exception cref="NotBegunException">It does not start.</exception>
     public static async Task<SimulatedBenchProcess> StartAsync(
-        RunRequest request, SimulationRequest simulation, SerialChoice serials, CancellationToken cancellation)
+        RunRequest request, SimulationRequest simulation, IReadOnlyList<string> labels, int? boards,
+        CancellationToken cancellation)
     {
         ProcessStartInfo start = StartInfo();
         string[] arguments =
@@ -42,8 +42,8 @@ internal sealed class SimulatedBenchProcess : IAsyncDisposable
             "--free-ports",
         ];
         Array.ForEach(arguments, start.ArgumentList.Add);
-        AddOptional(start, "--first-serial", serials.FirstLabel);
-        AddOptional(start, "--boards", serials.Boards?.ToString(CultureInfo.InvariantCulture));
+        AddOptional(start, "--first-serial", labels.Count > 0 ? labels[0] : null);
+        AddOptional(start, "--boards", boards?.ToString(CultureInfo.InvariantCulture));
         AddOptional(start, "--log", simulation.BenchLogPath);
         Process started = Process.Start(start)
             ?? throw new NotBegunException($"the simulated bench did not start: {start.FileName}");

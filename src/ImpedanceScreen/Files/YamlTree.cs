@@ -19,6 +19,7 @@ public sealed class YamlTree
 
     private readonly Parser parser;
     private readonly MistakeList mistakes;
+    private ParsingEvent current = new StreamStart();
 
     private YamlTree(string text, MistakeList mistakes)
     {
@@ -53,8 +54,7 @@ public sealed class YamlTree
         catch (Exception error) when (error is InvalidOperationException or ArgumentException)
         {
             // The parser's own slips: a flow list that is never closed, an escape beyond Unicode.
-            Mark after = tree.parser.Current is { } last ? At(last.End) : new(1, 1);
-            return tree.Unreadable(after, "a bracket that is not closed or an impossible escape follows");
+            return tree.Unreadable(At(tree.current.End), "a bracket that is not closed or an impossible escape follows");
         }
     }
 
@@ -67,18 +67,17 @@ public sealed class YamlTree
 
     private YamlMapping? ReadStream()
     {
-        Next<StreamStart>();
-        if (parser.MoveNext() && parser.Current is StreamEnd)
+        Step();
+        if (Step() is StreamEnd)
         {
             mistakes.Add(new(1, 1), "", "the file is empty", "give it at least `kind` and `format`");
             return null;
         }
 
-        parser.MoveNext();
+        Step();
         YamlNode root = ReadNode(depth: 0);
-        Next<DocumentEnd>();
-        parser.MoveNext();
-        if (parser.Current is DocumentStart second)
+        Step();
+        if (Step() is DocumentStart second)
         {
             mistakes.Add(At(second.Start), "", "a second document begins here", "keep one document in a file");
         }
@@ -92,10 +91,10 @@ public sealed class YamlTree
         return null;
     }
 
-    // The parser stands on the first event of a node when this is called, and on its last when it returns.
+    // The current event is the first of a node when this is called, and its last when it returns.
     private YamlNode ReadNode(int depth)
     {
-        ParsingEvent first = parser.Current!;
+        ParsingEvent first = current;
         Mark mark = At(first.Start);
         if (depth > DeepestNesting)
         {
@@ -120,7 +119,7 @@ public sealed class YamlTree
     private List<YamlNode> ReadItems(int depth)
     {
         List<YamlNode> items = [];
-        while (parser.MoveNext() && parser.Current is not SequenceEnd)
+        while (Step() is not SequenceEnd)
         {
             items.Add(ReadNode(depth + 1));
         }
@@ -132,10 +131,10 @@ public sealed class YamlTree
     {
         List<YamlEntry> entries = [];
         Dictionary<string, Mark> seen = new(StringComparer.Ordinal);
-        while (parser.MoveNext() && parser.Current is not MappingEnd)
+        while (Step() is not MappingEnd)
         {
             YamlNode key = ReadNode(depth + 1);
-            parser.MoveNext();
+            Step();
             YamlNode value = ReadNode(depth + 1);
             if (KeyOf(key) is not { } name)
             {
@@ -191,15 +190,11 @@ public sealed class YamlTree
         }
     }
 
-    private void Next<T>()
-        where T : ParsingEvent
-    {
-        if (!parser.MoveNext() || parser.Current is not T)
-        {
-            YamlDotNet.Core.Mark here = parser.Current?.Start ?? YamlDotNet.Core.Mark.Empty;
-            throw new SyntaxErrorException(here, here, "the document does not end where it should");
-        }
-    }
+    // After some slips the parser gives no event in the middle of a document, with no word why.
+    private ParsingEvent Step() =>
+        current = parser.MoveNext() && parser.Current is { } next
+            ? next
+            : throw new SyntaxErrorException(current.End, current.End, "the document ends in the middle");
 
     private static Mark At(YamlDotNet.Core.Mark mark) =>
         new((int)Math.Max(1, mark.Line), (int)Math.Max(1, mark.Column));

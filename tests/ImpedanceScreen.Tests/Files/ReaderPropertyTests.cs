@@ -38,6 +38,10 @@ public sealed class ReaderPropertyTests
         Gen.OneOf(Gen.Char[Awkward], Gen.Char['a', 'c']).Array[0, 60].Sample(
             letters => IsAnswered(new string(letters), [], LimitFileBinder.Bind), iter: 5_000);
 
+    [Fact]
+    public void A_document_that_the_parser_leaves_in_the_middle_is_a_mistake() =>
+        Assert.True(IsAnswered(SmallFiles.LimitsText, [(0, 28, "'"), (0, 19, "? ")], LimitFileBinder.Bind));
+
     // Either a value, or mistakes that each have a place, a problem and a cure, on one line.
     private static bool IsAnswered<T>(
         string text, (double At, int Removed, string Put)[] changes, Func<FileText, Checked<T>> bind)

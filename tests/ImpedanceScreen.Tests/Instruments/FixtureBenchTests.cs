@@ -8,6 +8,7 @@ using Microsoft.Extensions.Time.Testing;
 namespace ImpedanceScreen.Tests.Instruments;
 
 /// <summary>The bench on its own protocols, with a relay fixture and a meter in this process.</summary>
+[Collection(RealTime.Name)]
 public sealed class FixtureBenchTests : IAsyncLifetime
 {
     private readonly FakeTimeProvider time = new();

@@ -5,6 +5,7 @@ using Microsoft.Extensions.Time.Testing;
 namespace ImpedanceScreen.Tests.Instruments;
 
 /// <summary>A peer misbehaves; the exchange fails by name, and the next one works.</summary>
+[Collection(RealTime.Name)]
 public sealed class ModbusFaultTests
 {
     private readonly FakeTimeProvider time = new();

@@ -3,6 +3,7 @@ using ImpedanceScreen.Benchmarks.Replies;
 namespace ImpedanceScreen.Tests.Instruments;
 
 /// <summary>Replies that are right, nearly right or noise.</summary>
+[Collection(RealTime.Name)]
 public sealed class MutatedReplyTests
 {
     [Theory]

@@ -8,6 +8,7 @@ namespace ImpedanceScreen.Tests.Instruments;
 /// <summary>
 /// Silence between frames on a serial line (MODBUS over Serial Line V1.02, 2.5.1.1), under a test's clock.
 /// </summary>
+[Collection(RealTime.Name)]
 public sealed class RtuTimingTests
 {
     private readonly FakeTimeProvider time = new();

@@ -7,6 +7,7 @@ using Microsoft.Extensions.Time.Testing;
 namespace ImpedanceScreen.Tests.Instruments;
 
 /// <summary>A meter over TCP and on a serial line; whatever goes wrong, the next reading is the meter's next.</summary>
+[Collection(RealTime.Name)]
 public sealed class ScpiMeterTests
 {
     private readonly FakeTimeProvider time = new();

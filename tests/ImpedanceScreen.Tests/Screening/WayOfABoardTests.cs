@@ -221,11 +221,28 @@ public sealed class WayOfABoardTests
         Assert.Equal(["S-001", "S-002"], Boards.Select(board => board.Serial));
     }
 
+    [Fact]
+    public void A_defect_of_the_program_itself_still_opens_all_relays()
+    {
+        bench.Before = each =>
+        {
+            if (each == "read")
+            {
+                throw new InvalidOperationException("a defect");
+            }
+        };
+
+        Assert.Throws<InvalidOperationException>(() => Run(["S-001"]));
+        Assert.Equal("open all", bench.Events[^1]);
+        Assert.Empty(bench.Closed);
+    }
+
     private LotEnd Run(string[] serials, string? inNest = null, CancellationToken stop = default)
     {
         var order = new LotOrder(job, "lot", "jo", new ListedSerials(serials), inNest);
+        var settings = new RunSettings("1.0", 1.0, time, new InlineScheduler());
         var runner = new LotRunner(
-            bench, store, new StatusBoard(time), order, new RunSettings("1.0", 1.0, time), NullLogger<LotRunner>.Instance);
+            bench, store, new StatusBoard(time), order, settings, NullLogger<LotRunner>.Instance);
         return FakeTime.Run(time, () => runner.RunAsync(stop));
     }
 }

@@ -4,6 +4,7 @@ using ImpedanceScreen.SimulatedBench.Circuits;
 namespace ImpedanceScreen.Tests.SimulatedBench;
 
 /// <summary>What is drawn once a bench, over many benches.</summary>
+[Collection(RealTime.Name)]
 public sealed class BenchTruthTests
 {
     private const int Benches = 4000;

@@ -6,6 +6,7 @@ using System.Text.Json;
 namespace ImpedanceScreen.Tests.SimulatedBench;
 
 /// <summary>The simulated bench as a program of its own.</summary>
+[Collection(RealTime.Name)]
 public sealed class ExecutableTests
 {
     private static readonly string Program = Path.Combine(AppContext.BaseDirectory, "ImpedanceScreen.SimulatedBench.dll");
@@ -79,17 +80,16 @@ public sealed class ExecutableTests
 
     private static async Task AwaitAsync(string path, string text)
     {
-        using CancellationTokenSource limit = new(TimeSpan.FromSeconds(20));
-        while (true)
+        DateTime limit = DateTime.UtcNow.AddSeconds(20);
+        string found;
+        do
         {
+            await Task.Delay(10);
             await using FileStream file = new(path, FileMode.Open, FileAccess.Read, FileShare.ReadWrite);
             using StreamReader reader = new(file);
-            if ((await reader.ReadToEndAsync(limit.Token)).Contains(text, StringComparison.Ordinal))
-            {
-                return;
-            }
-
-            await Task.Delay(10, limit.Token);
+            found = await reader.ReadToEndAsync();
+            Assert.True(DateTime.UtcNow < limit, $"no {text} in: {found}");
         }
+        while (!found.Contains(text, StringComparison.Ordinal));
     }
 }

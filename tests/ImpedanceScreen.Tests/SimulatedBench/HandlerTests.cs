@@ -6,6 +6,7 @@ using ImpedanceScreen.SimulatedBench.Logging;
 namespace ImpedanceScreen.Tests.SimulatedBench;
 
 /// <summary>The handler's side of the handshake.</summary>
+[Collection(RealTime.Name)]
 public sealed class HandlerTests
 {
     private const byte Unit = 7;

@@ -10,6 +10,7 @@ using Microsoft.Extensions.Time.Testing;
 namespace ImpedanceScreen.Tests.SimulatedBench;
 
 /// <summary>The simulated meter's dialogue, byte for byte.</summary>
+[Collection(RealTime.Name)]
 public sealed class MeterServerTests
 {
     private static readonly Link MeterLink = new ExactBench().MeterLink;

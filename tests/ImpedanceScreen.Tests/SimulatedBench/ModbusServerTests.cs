@@ -7,6 +7,7 @@ using Microsoft.Extensions.Time.Testing;
 namespace ImpedanceScreen.Tests.SimulatedBench;
 
 /// <summary>The relay units as the project's own client sees them.</summary>
+[Collection(RealTime.Name)]
 public sealed class ModbusServerTests
 {
     private const byte Unit = 7;

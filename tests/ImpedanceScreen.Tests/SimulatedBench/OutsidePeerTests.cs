@@ -5,6 +5,7 @@ using ImpedanceScreen.SimulatedBench;
 namespace ImpedanceScreen.Tests.SimulatedBench;
 
 /// <summary>The relay units as a client that nobody here wrote sees them: pymodbus, from Debian's packages.</summary>
+[Collection(RealTime.Name)]
 public sealed class OutsidePeerTests
 {
     [Fact]

@@ -9,6 +9,7 @@ using Microsoft.Extensions.Logging.Abstractions;
 namespace ImpedanceScreen.Tests.SimulatedBench;
 
 /// <summary>The shipped bench driven by the station's own instruments.</summary>
+[Collection(RealTime.Name)]
 public sealed class WholeBenchTests
 {
     private const double TimeScale = 0.1;

@@ -6,6 +6,7 @@ using Microsoft.Extensions.Logging.Abstractions;
 namespace ImpedanceScreen.Tests.Instruments.Peers;
 
 /// <summary>Our client with servers that others wrote: pymodbus and libmodbus, over TCP and on a serial line.</summary>
+[Collection(RealTime.Name)]
 public sealed class ModbusPeerTests
 {
     private static readonly ChannelFactory Channels = new(TimeProvider.System, NullLogger.Instance);

@@ -7,6 +7,7 @@ using Microsoft.Extensions.Logging.Abstractions;
 namespace ImpedanceScreen.Tests.Instruments.Peers;
 
 /// <summary>A meter at the far end of a real serial port, in real time.</summary>
+[Collection(RealTime.Name)]
 public sealed class ScpiSerialTests
 {
     [Fact]
