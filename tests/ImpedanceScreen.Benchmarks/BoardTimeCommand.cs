@@ -20,8 +20,8 @@ internal sealed class BoardTimeCommand : IFigureCommand
 
     public async Task<int> RunAsync(int count, ulong seed, CancellationToken cancellation)
     {
-        IReadOnlyList<BoardSpan> sequential = await TimedLot.RunAsync("simulated-bench.yaml", count, seed, cancellation);
-        IReadOnlyList<BoardSpan> overlapped = await TimedLot.RunAsync("simulated-own-banks.yaml", count, seed, cancellation);
+        IReadOnlyList<BoardSpan> sequential = await TimedLot.RunAsync("simulated-bench.yaml", count, seed);
+        IReadOnlyList<BoardSpan> overlapped = await TimedLot.RunAsync("simulated-own-banks.yaml", count, seed);
         bool good = Report("one load bank, sequential: over waits and readings", sequential, span => span.OverFloor, SequentialMost);
         good &= Report("a load bank an output: over readings and sense switching", overlapped, span => span.OverReadings, OverlappedMost);
         return good ? 0 : 1;

@@ -12,5 +12,6 @@ internal static class FigureCommands
         new RepliesCommand(),
         new AppendCommand(),
         new TamperCommand(),
+        new KillsCommand(),
     ];
 }

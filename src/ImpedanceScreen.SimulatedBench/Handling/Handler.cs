@@ -57,12 +57,14 @@ internal sealed class Handler(
     {
         SimulatedBoard board = factory.Make(ordinal);
         truth?.Add(board);
-        model.Log.Add(new BoardPresented(ordinal, board.Label));
-        model.SetBoard(board);
         if (ordinal == 1)
         {
+            // Before the board is told of: who then opens the guard must find it closed.
             model.SetInterlock(closed: true);
         }
+
+        model.Log.Add(new BoardPresented(ordinal, board.Label));
+        model.SetBoard(board);
     }
 
     private void Lift(string bin)

@@ -1,7 +1,7 @@
-using System.Diagnostics;
 using System.Globalization;
 using System.Text;
 using System.Text.Json;
+using ImpedanceScreen.Benchmarks.Programs;
 using ImpedanceScreen.Files;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
@@ -17,25 +17,20 @@ namespace ImpedanceScreen.Benchmarks.BoardTime;
 internal static class TimedLot
 {
     public static async Task<IReadOnlyList<BoardSpan>> RunAsync(
-        string fixtureName, int count, ulong seed, CancellationToken cancellation)
+        string fixtureName, int count, ulong seed)
     {
-        string root = Root();
-        ScreeningJob job = Load(root, fixtureName);
+        ScreeningJob job = Load(fixtureName);
         string folder = Directory.CreateTempSubdirectory("board-time-").FullName;
         try
         {
             string store = Path.Combine(folder, "records.db");
             string log = Path.Combine(folder, "bench.jsonl");
-            await StationAsync(root, ["store-create", "--store", store, "--station", "board-time"], cancellation);
+            await StationAsync("store-create", "--store", store, "--station", "board-time");
             string[] lines = await StationAsync(
-                root,
-                [
                     "lot", "--simulated", "--json", "--population", "fixtures/tern-6-population.yaml", "--fixture",
                     $"fixtures/{fixtureName}", "--limits", "limits/tern-6.yaml", "--store", store, "--lot", "board-time",
                     "--first-serial", "T6-000001", "--count", count.ToString(CultureInfo.InvariantCulture), "--seed",
-                    seed.ToString(CultureInfo.InvariantCulture), "--bench-log", log,
-                ],
-                cancellation);
+                    seed.ToString(CultureInfo.InvariantCulture), "--bench-log", log);
             BoardRecord[] records = [.. lines.Select(line => (BoardRecord)BodyCodec.Decode(Encoding.UTF8.GetBytes(line)))];
             return Spans(job, records, [.. File.ReadLines(log).Select(Event)]);
         }
@@ -86,38 +81,18 @@ internal static class TimedLot
     private static BenchEvent Event(string line) =>
         JsonSerializer.Deserialize<BenchEvent>(line, BenchLog.Json) ?? throw new JsonException("empty line");
 
-    private static ScreeningJob Load(string root, string fixtureName) =>
+    private static ScreeningJob Load(string fixtureName) =>
         JobBinder.Bind(
-            LimitFileBinder.Bind(Text(root, "limits/tern-6.yaml")).Value,
-            FixtureFileBinder.Bind(Text(root, $"fixtures/{fixtureName}")).Value).Value;
+            LimitFileBinder.Bind(Text("limits/tern-6.yaml")).Value,
+            FixtureFileBinder.Bind(Text($"fixtures/{fixtureName}")).Value).Value;
 
-    private static FileText Text(string root, string name) => new(name, File.ReadAllText(Path.Combine(root, name)));
+    private static FileText Text(string name) => new(name, File.ReadAllText(Repository.File(name)));
 
-    private static async Task<string[]> StationAsync(string root, string[] arguments, CancellationToken cancellation)
+    private static async Task<string[]> StationAsync(params string[] arguments)
     {
-        string configuration = new DirectoryInfo(AppContext.BaseDirectory).Parent!.Name;
-        string station = Path.Combine(
-            root, "src/ImpedanceScreen.Station/bin", configuration, "net10.0/ImpedanceScreen.Station.dll");
-        var start = new ProcessStartInfo("dotnet", [station, .. arguments])
-        {
-            WorkingDirectory = root, RedirectStandardOutput = true, UseShellExecute = false,
-        };
-        using Process process = Process.Start(start) ?? throw new InvalidOperationException("dotnet did not start");
-        string output = await process.StandardOutput.ReadToEndAsync(cancellation);
-        await process.WaitForExitAsync(cancellation);
-        return process.ExitCode == 0
-            ? output.Split('\n', StringSplitOptions.RemoveEmptyEntries)
-            : throw new InvalidOperationException($"the station ended with {process.ExitCode}: {output}");
-    }
-
-    private static string Root()
-    {
-        DirectoryInfo? folder = new(AppContext.BaseDirectory);
-        while (folder is not null && !File.Exists(Path.Combine(folder.FullName, "ImpedanceScreen.sln")))
-        {
-            folder = folder.Parent;
-        }
-
-        return folder?.FullName ?? throw new InvalidOperationException("run it from within the repository");
+        ProgramEnd end = await StationProgram.RunAsync(arguments);
+        return end.ExitCode == 0
+            ? end.Lines
+            : throw new InvalidOperationException($"the station ended with {end.ExitCode}: {end.Output}{end.Errors}");
     }
 }
