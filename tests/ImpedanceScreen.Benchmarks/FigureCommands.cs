@@ -13,5 +13,6 @@ internal static class FigureCommands
         new AppendCommand(),
         new TamperCommand(),
         new KillsCommand(),
+        new DurabilityCommand(),
     ];
 }

@@ -17,6 +17,9 @@ public sealed class LotRunner
 {
     private const int AbortedInARowMax = 3;
 
+    // After a stop; a handler needs less, and a service manager's own limit lies above.
+    private static readonly TimeSpan LeavingLimit = TimeSpan.FromSeconds(5);
+
     private readonly IBench bench;
     private readonly IRecordStore store;
     private readonly StatusBoard status;
@@ -253,9 +256,18 @@ public sealed class LotRunner
         return end;
     }
 
-    /// <summary>Only reached when the record of the attempt is durable.</summary>
-    private async Task SortAsync(BoardRecord record, CancellationToken cancellation)
+    /// <summary>
+    /// Only reached when the record of the attempt is durable. A stop lets the sorted board leave first: otherwise
+    /// nobody could say at the next start which board lies in the nest.
+    /// </summary>
+    private async Task SortAsync(BoardRecord record, CancellationToken stop)
     {
+        using var leaving = new CancellationTokenSource();
+        await using ITimer limit = run.Time.CreateTimer(
+            _ => leaving.Cancel(), null, Timeout.InfiniteTimeSpan, Timeout.InfiniteTimeSpan);
+        await using CancellationTokenRegistration stopped =
+            stop.Register(() => limit.Change(LeavingLimit, Timeout.InfiniteTimeSpan));
+        CancellationToken cancellation = leaving.Token;
         status.Publish(Activity.Sorting, $"board goes to {record.Disposition}", record.Serial, 1);
         await handler.SortAsync(record.Disposition, cancellation);
         if (order.Job.Fixture.Handshake is not null)
@@ -265,6 +277,7 @@ public sealed class LotRunner
 
         await FinishAsync();
         await handler.EndAsync(cancellation);
+        stop.ThrowIfCancellationRequested();
     }
 
     private async Task MakeReadyAgainAsync(AttemptEnd end, CancellationToken cancellation)

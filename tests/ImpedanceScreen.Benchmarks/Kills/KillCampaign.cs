@@ -63,7 +63,7 @@ internal sealed class KillCampaign : IAsyncDisposable
             await judge.LookAsync();
             if (left.ExitCode == 0 && kills == wanted)
             {
-                return await ReportAsync();
+                return await judge.ReportAsync(kills, atHandshake, holds);
             }
 
             inNest = Next(left);
@@ -122,18 +122,13 @@ internal sealed class KillCampaign : IAsyncDisposable
         Handshake coils = bench.Job.Fixture.Handshake!;
         return
         [
-            Line(coils.Busy, "true"), Line(coils.PassBin, "true"), Line(coils.Done, "true"), Line(coils.Done, "false"),
-            Line(coils.Busy, "false"), Line(bench.Job.Fixture.BoardSupply!.Relay, "false"), "\"board-lifted\"",
+            LineTrigger.On(coils.Busy), LineTrigger.On(coils.PassBin), LineTrigger.On(coils.Done),
+            LineTrigger.Off(coils.Done), LineTrigger.Off(coils.Busy),
+            LineTrigger.Off(bench.Job.Fixture.BoardSupply!.Relay), "\"board-lifted\"",
         ];
-
-        static string Line(Relay relay, string on) => string.Create(
-            CultureInfo.InvariantCulture, $"\"unit\":\"{relay.Unit}\",\"coil\":{relay.Coil},\"on\":{on}");
     }
 
     // Half the time the next start comes before the relay units' own watchdogs have opened anything.
     private Task PauseAsync(CancellationToken cancellation) =>
         random.Next(2) == 0 ? Task.CompletedTask : Task.Delay(judge.WatchdogTime, cancellation);
-
-    private async Task<KillReport> ReportAsync() =>
-        await judge.ReportAsync(kills, atHandshake, holds);
 }

@@ -1,4 +1,6 @@
+using System.Globalization;
 using System.Text;
+using ImpedanceScreen.Fixtures;
 
 namespace ImpedanceScreen.Benchmarks.Programs;
 
@@ -11,6 +13,12 @@ internal sealed class LineTrigger : TextWriter
 
     /// <inheritdoc/>
     public override Encoding Encoding => Encoding.UTF8;
+
+    /// <summary>What the log says when a coil goes on.</summary>
+    public static string On(Relay relay) => Coil(relay, "true");
+
+    /// <summary>What the log says when a coil goes off.</summary>
+    public static string Off(Relay relay) => Coil(relay, "false");
 
     /// <summary>Ends at the next line that holds these words. One waiter at a time.</summary>
     public Task NextAsync(string line)
@@ -35,4 +43,7 @@ internal sealed class LineTrigger : TextWriter
             }
         }
     }
+
+    private static string Coil(Relay relay, string on) => string.Create(
+        CultureInfo.InvariantCulture, $"\"unit\":\"{relay.Unit}\",\"coil\":{relay.Coil},\"on\":{on}");
 }

@@ -16,6 +16,8 @@ internal sealed record ProgramEnd(int ExitCode, string Output, string Errors)
 /// <summary>The station as a process of its own, as a person starts it.</summary>
 internal sealed class StationProgram : IDisposable
 {
+    private static readonly TimeSpan Longest = TimeSpan.FromMinutes(2);
+
     private readonly Process process;
 
     private StationProgram(Process process, Task<ProgramEnd> ended)
@@ -55,6 +57,17 @@ internal sealed class StationProgram : IDisposable
         return await program.Ended;
     }
 
+    /// <summary>Waits for something at the bench that the running program brings about.</summary>
+    /// <exception cref="InvalidOperationException">The program ended before.</exception>
+    public async Task ReachesAsync(Task step)
+    {
+        if (await Task.WhenAny(step, Ended).WaitAsync(Longest) != step)
+        {
+            ProgramEnd end = await Ended;
+            throw new InvalidOperationException($"the station ended with {end.ExitCode}: {end.Output}{end.Errors}");
+        }
+    }
+
     /// <summary>Types a line.</summary>
     public void Type(string line) => process.StandardInput.WriteLine(line);
 
@@ -85,9 +98,15 @@ internal sealed class StationProgram : IDisposable
 
     private static async Task<ProgramEnd> EndOf(Process process)
     {
-        Task<string> errors = process.StandardError.ReadToEndAsync();
-        string output = await process.StandardOutput.ReadToEndAsync();
+        Task<string> output = ReadAsync(process.StandardOutput);
+        string errors = await ReadAsync(process.StandardError);
+        string all = await output;
         await process.WaitForExitAsync();
-        return new ProgramEnd(process.ExitCode, output, await errors);
+        return new ProgramEnd(process.ExitCode, all, errors);
     }
+
+    // A read of a pipe holds its thread however it is called: on threads of the pool, a bench in this process would
+    // answer late.
+    private static Task<string> ReadAsync(StreamReader reader) => Task.Factory.StartNew(
+        reader.ReadToEnd, CancellationToken.None, TaskCreationOptions.LongRunning, TaskScheduler.Default);
 }

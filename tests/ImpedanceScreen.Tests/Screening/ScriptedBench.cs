@@ -34,6 +34,9 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
         set => handshake = value;
     }
 
+    /// <summary>Whether a handler takes a board away when it is told.</summary>
+    public bool Leaves { get; set; } = true;
+
     public bool Present
     {
         get => present;
@@ -102,7 +105,7 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
         Note($"handshake {state.Bin}{(state.Busy ? " busy" : "")}{(state.Done ? " done" : "")}");
         bool wasDone = handshake.Done;
         handshake = state;
-        if (state.Done && !wasDone)
+        if (state.Done && !wasDone && Leaves)
         {
             // A handler that is quick: the board is gone before the next poll.
             present = false;

@@ -183,6 +183,45 @@ public sealed class WayOfABoardTests
     }
 
     [Fact]
+    public void Told_to_stop_a_board_that_is_sorted_leaves_first()
+    {
+        using var stop = new CancellationTokenSource();
+        bench.Before = each =>
+        {
+            if (each == "handshake Pass busy done")
+            {
+                stop.Cancel();
+            }
+        };
+        LotEnd end = Run(["S-001", "S-002"], stop: stop.Token);
+
+        Assert.Equal(LotEndKind.Stopped, end.Kind);
+        Assert.Equal(Disposition.Pass, Assert.Single(Boards).Disposition);
+        Assert.Empty(store.Unfinished);
+        Assert.Equal("handshake None", bench.Events.Last(each => each.StartsWith("handshake", StringComparison.Ordinal)));
+    }
+
+    [Fact]
+    public void Told_to_stop_a_board_that_does_not_leave_is_not_waited_for_long()
+    {
+        using var stop = new CancellationTokenSource();
+        bench.Leaves = false;
+        bench.Before = each =>
+        {
+            if (each == "handshake Pass busy done")
+            {
+                stop.Cancel();
+            }
+        };
+        DateTimeOffset begun = time.GetUtcNow();
+        LotEnd end = Run(["S-001"], stop: stop.Token);
+
+        Assert.Equal(LotEndKind.Stopped, end.Kind);
+        Assert.Single(store.Unfinished);
+        Assert.InRange((time.GetUtcNow() - begun).TotalSeconds, 5, 10);
+    }
+
+    [Fact]
     public void A_board_that_failed_before_does_not_pass_by_being_tried_again()
     {
         Run(["S-001"]);
