@@ -121,8 +121,8 @@ public sealed class FixtureBench : IBench
         });
 
     /// <inheritdoc/>
-    public Task<MeterReading> ReadAsync(Meter meter, CancellationToken cancellation) =>
-        AskAsync(meter, it => it.ReadAsync(cancellation));
+    public Task<IReadOnlyList<MeterReading>> ReadAsync(Meter meter, int count, CancellationToken cancellation) =>
+        AskAsync(meter, it => it.ReadAsync(count, cancellation));
 
     /// <inheritdoc/>
     public async Task<double?> ReadTemperatureAsync(CancellationToken cancellation) =>

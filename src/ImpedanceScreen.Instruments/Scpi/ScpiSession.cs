@@ -48,6 +48,9 @@ public sealed class ScpiSession : IAsyncDisposable
     /// </summary>
     public bool IsClean { get; private set; }
 
+    /// <summary>How long an answer that was given up may still be under way.</summary>
+    public TimeSpan Owing => outstanding is { } due ? due.Remaining : TimeSpan.Zero;
+
     /// <summary>Opens the link, reopens a socket, or drains a serial line.</summary>
     /// <exception cref="ScpiException">The link does not open.</exception>
     public async Task CleanAsync(CancellationToken cancellation)

@@ -211,22 +211,30 @@ public sealed class BoardAttempt
         {
             Deadline atRest = await runner.SenseAsync(state.Meter, state.Output.Sense, cancellation);
             await ledger.SettlingAsync(watch.UntilAsync(atRest, cancellation), atRest.Remaining);
-            MeterReading reading;
-            do
+            while (!await IsDischargedAsync(state, supply, limit, cancellation))
             {
-                reading = await ledger.ReadingAsync(
-                    watch.BesideAsync(token => bench.ReadAsync(state.Meter, token), cancellation),
-                    state.Meter.Integration * settings.TimeScale);
-                if (limit.Passed)
-                {
-                    throw new BenchFaultException(
-                        BenchFault.NotDischarged,
-                        $"output {state.Output.Name} still reads {reading.Raw} V with the supply off: stored energy or "
-                        + "a supply relay that did not open; do not touch the board before it is discharged");
-                }
             }
-            while (reading.Condition != ReadingCondition.Valid || Math.Abs(reading.Volt) > supply.OffBelowVolt);
         }
+    }
+
+    private async Task<bool> IsDischargedAsync(
+        StateJob state, BoardSupply supply, Deadline limit, CancellationToken cancellation)
+    {
+        IReadOnlyList<MeterReading> readings = await ledger.ReadingAsync(
+            watch.BesideAsync(token => bench.ReadAsync(state.Meter, 1, token), cancellation),
+            state.Meter.Integration * settings.TimeScale);
+        MeterReading reading = readings[0];
+        if (reading.Condition == ReadingCondition.Valid && Math.Abs(reading.Volt) <= supply.OffBelowVolt)
+        {
+            return true;
+        }
+
+        return limit.Passed
+            ? throw new BenchFaultException(
+                BenchFault.NotDischarged,
+                $"output {state.Output.Name} still reads {reading.Raw} V with the supply off: stored energy or "
+                + "a supply relay that did not open; do not touch the board before it is discharged")
+            : false;
     }
 
     private void Show(Lane lane) =>

@@ -114,14 +114,9 @@ internal sealed class LoadPointRunner(
     {
         StateJob state = lane.State!;
         await bench.SetRangeAsync(state.Meter, state.Range, cancellation);
-        List<MeterReading> readings = new(lane.Wanted!.Count);
-        for (int i = 0; i < lane.Wanted.Count; i++)
-        {
-            readings.Add(await ledger.ReadingAsync(
-                bench.ReadAsync(state.Meter, cancellation), state.Meter.Integration * timeScale));
-        }
-
-        return readings;
+        int count = lane.Wanted!.Count;
+        return await ledger.ReadingAsync(
+            bench.ReadAsync(state.Meter, count, cancellation), count * state.Meter.Integration * timeScale);
     }
 
     /// <summary>Lets a meter see one sense relay and no other.</summary>

@@ -91,8 +91,10 @@ internal sealed class SimulatedMeter
             answer = Indicate(measurement, integration);
         }
 
+        // As done, not as meant: a busy machine answers later.
+        double spentMs = model.Clock.Milliseconds(model.Clock.Now) - model.Clock.Milliseconds(start);
         model.Log.Add(new ReadingTaken(
-            meter.Name, model.Clock.Milliseconds(start), real.TotalMilliseconds, turnaround.TotalMilliseconds, answer));
+            meter.Name, model.Clock.Milliseconds(start), real.TotalMilliseconds, spentMs - real.TotalMilliseconds, answer));
         return answer;
     }
 

@@ -33,10 +33,10 @@ public interface IBench : IAsyncDisposable
     Task SetRangeAsync(Meter meter, MeterRange range, CancellationToken cancellation);
 
     /// <summary>
-    /// Takes one reading. When cancelled or timed out the meter's link is dirty: the next use drains or reopens it and
-    /// asks for the identity first.
+    /// Takes readings one right after another. When cancelled or timed out the meter's link is dirty: the next use drains
+    /// or reopens it and asks for the identity first.
     /// </summary>
-    Task<MeterReading> ReadAsync(Meter meter, CancellationToken cancellation);
+    Task<IReadOnlyList<MeterReading>> ReadAsync(Meter meter, int count, CancellationToken cancellation);
 
     /// <summary>Reads the temperature beside the loads, °C; null where there is no sensor.</summary>
     Task<double?> ReadTemperatureAsync(CancellationToken cancellation);

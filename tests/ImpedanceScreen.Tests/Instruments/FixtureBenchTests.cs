@@ -325,11 +325,11 @@ public sealed class FixtureBenchTests : IAsyncLifetime
         await StartAsync();
         await time.PumpAsync(bench.SetRangeAsync(TestBench.Meter, TestBench.TenVolt, CancellationToken.None));
         meter.NextAnswers.Enqueue(null);
-        Task<MeterReading> reading = bench.ReadAsync(TestBench.Meter, CancellationToken.None);
+        Task<IReadOnlyList<MeterReading>> reading = bench.ReadAsync(TestBench.Meter, 1, CancellationToken.None);
         await meter.ReceivedAsync();
         Assert.True((await PollAsync()).BoardPresent);
         await meter.SendAsync("+2.5E+00\n");
-        Assert.Equal(2.5, (await reading).Volt);
+        Assert.Equal(2.5, (await reading)[0].Volt);
     }
 
     [Fact]
@@ -347,8 +347,8 @@ public sealed class FixtureBenchTests : IAsyncLifetime
 
     private Task<InputState> PollAsync() => time.PumpAsync(bench.PollInputsAsync(CancellationToken.None));
 
-    private Task<MeterReading> ReadAsync() =>
-        time.PumpAsync(bench.ReadAsync(TestBench.Meter, CancellationToken.None));
+    private async Task<MeterReading> ReadAsync() =>
+        (await time.PumpAsync(bench.ReadAsync(TestBench.Meter, 1, CancellationToken.None)))[0];
 
     private Task<Switched> SwitchAsync(Relay[] open, Relay[] close) =>
         time.PumpAsync(bench.SwitchAsync(new SwitchOrder(open, close), CancellationToken.None));

@@ -60,7 +60,7 @@ internal sealed class MeterPeer
                     await SendAsync(answer + Terminator);
                 }
 
-                if (message == "READ?")
+                if (message.StartsWith("READ?", StringComparison.Ordinal))
                 {
                     received.Writer.TryWrite(message);
                 }
@@ -70,15 +70,18 @@ internal sealed class MeterPeer
 
     private string? Answer(string message)
     {
+        string[] units = message.Split(';');
+        if (units.All(unit => unit == "READ?"))
+        {
+            return Read(units.Length);
+        }
+
         switch (message)
         {
             case "*IDN?":
                 return Identity;
             case "SYST:ERR?":
                 return Errors.TryDequeue(out string? error) ? error : "+0,\"No error\"";
-            case "READ?":
-                Readings++;
-                return NextAnswers.TryDequeue(out string? answer) ? answer : $"+{Readings}.00000000E+00";
             case "*CLS":
                 return null;
             default:
@@ -89,5 +92,14 @@ internal sealed class MeterPeer
 
                 return null;
         }
+    }
+
+    // One answer a program message unit, parted by semicolons (IEEE 488.2 section 8.4).
+    private string? Read(int count)
+    {
+        IEnumerable<string> own = Enumerable.Range(Readings + 1, count).Select(number => $"+{number}.00000000E+00");
+        string together = string.Join(';', own);
+        Readings += count;
+        return NextAnswers.TryDequeue(out string? answer) ? answer : together;
     }
 }

@@ -57,7 +57,7 @@ public sealed class ScpiMeterTests
     {
         await using ScpiMeter meter = await ReadyMeterAsync(serial);
         peer.NextAnswers.Enqueue(null);
-        Task<MeterReading> silent = meter.ReadAsync(CancellationToken.None);
+        Task silent = meter.ReadAsync(1, CancellationToken.None);
         await peer.ReceivedAsync();
         time.Advance(2 * TestLinks.Timeout);
         ScpiException error = await Assert.ThrowsAsync<ScpiException>(() => silent);
@@ -76,18 +76,18 @@ public sealed class ScpiMeterTests
         await using ScpiMeter meter = await ReadyMeterAsync(serial);
         peer.NextAnswers.Enqueue(null);
         using CancellationTokenSource caller = new();
-        Task<MeterReading> cancelled = meter.ReadAsync(caller.Token);
+        Task cancelled = meter.ReadAsync(1, caller.Token);
         await peer.ReceivedAsync();
         await caller.CancelAsync();
         await Assert.ThrowsAnyAsync<OperationCanceledException>(() => cancelled);
 
-        Task<MeterReading> next = meter.ReadAsync(CancellationToken.None);
+        Task<IReadOnlyList<MeterReading>> next = meter.ReadAsync(1, CancellationToken.None);
         if (serial)
         {
             await peer.SendAsync("+7.77000000E+00\n");
         }
 
-        Assert.Equal(2.0, (await time.PumpAsync(next, 10)).Volt);
+        Assert.Equal(2.0, (await time.PumpAsync(next, 10))[0].Volt);
         Assert.Equal(3.0, (await ReadAsync(meter)).Volt);
     }
 
@@ -96,7 +96,7 @@ public sealed class ScpiMeterTests
     {
         await using ScpiMeter meter = await ReadyMeterAsync(serial: true);
         peer.NextAnswers.Enqueue(null);
-        Task<MeterReading> silent = meter.ReadAsync(CancellationToken.None);
+        Task silent = meter.ReadAsync(1, CancellationToken.None);
         await peer.ReceivedAsync();
         time.Advance(2 * TestLinks.Timeout);
         await Assert.ThrowsAsync<ScpiException>(() => silent);
@@ -189,7 +189,39 @@ public sealed class ScpiMeterTests
         Assert.DoesNotContain("READ?", peer.Messages);
     }
 
-    private Task<MeterReading> ReadAsync(ScpiMeter meter) => time.PumpAsync(meter.ReadAsync(CancellationToken.None));
+    [Fact]
+    public async Task Readings_of_one_load_point_are_asked_for_in_one_message()
+    {
+        await using ScpiMeter meter = await ReadyMeterAsync(serial: false);
+        IReadOnlyList<MeterReading> readings = await time.PumpAsync(meter.ReadAsync(4, CancellationToken.None));
+
+        Assert.Equal([1.0, 2.0, 3.0, 4.0], readings.Select(reading => reading.Volt));
+        Assert.Equal("READ?;READ?;READ?;READ?", peer.Messages[^1]);
+    }
+
+    [Fact]
+    public async Task No_message_asks_for_more_than_a_line_holds()
+    {
+        await using ScpiMeter meter = await ReadyMeterAsync(serial: false);
+        IReadOnlyList<MeterReading> readings = await time.PumpAsync(meter.ReadAsync(50, CancellationToken.None), 10);
+
+        Assert.Equal(Enumerable.Range(1, 50), readings.Select(reading => (int)reading.Volt));
+        Assert.All(peer.Messages, message => Assert.InRange(message.Length, 1, ScpiSession.LineLength / 2));
+    }
+
+    [Fact]
+    public async Task Fewer_readings_than_were_asked_for_are_an_error()
+    {
+        await using ScpiMeter meter = await ReadyMeterAsync(serial: false);
+        peer.NextAnswers.Enqueue("+1.0E+00;+2.0E+00");
+        ScpiException error = await Assert.ThrowsAsync<ScpiException>(
+            () => time.PumpAsync(meter.ReadAsync(3, CancellationToken.None)));
+        Assert.Equal(ScpiFault.NotNumeric, error.Fault);
+        Assert.Contains("3 readings", error.Message, StringComparison.Ordinal);
+    }
+
+    private async Task<MeterReading> ReadAsync(ScpiMeter meter) =>
+        (await time.PumpAsync(meter.ReadAsync(1, CancellationToken.None)))[0];
 
     private async Task<ScpiMeter> ReadyMeterAsync(bool serial, int retries = 0)
     {

@@ -74,13 +74,19 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
 
     public Task SetRangeAsync(Meter meter, MeterRange range, CancellationToken cancellation) => Task.CompletedTask;
 
-    public Task<MeterReading> ReadAsync(Meter meter, CancellationToken cancellation)
+    public Task<IReadOnlyList<MeterReading>> ReadAsync(Meter meter, int count, CancellationToken cancellation)
     {
-        cancellation.ThrowIfCancellationRequested();
-        Note("read");
-        double volt = Volt();
-        return Task.FromResult(new MeterReading(
-            volt.ToString("E8", CultureInfo.InvariantCulture), ReadingCondition.Valid, volt, time.GetUtcNow()));
+        List<MeterReading> readings = [];
+        while (readings.Count < count)
+        {
+            cancellation.ThrowIfCancellationRequested();
+            Note("read");
+            double volt = Volt();
+            readings.Add(new MeterReading(
+                volt.ToString("E8", CultureInfo.InvariantCulture), ReadingCondition.Valid, volt, time.GetUtcNow()));
+        }
+
+        return Task.FromResult<IReadOnlyList<MeterReading>>(readings);
     }
 
     public Task<double?> ReadTemperatureAsync(CancellationToken cancellation) => Task.FromResult<double?>(23.0);

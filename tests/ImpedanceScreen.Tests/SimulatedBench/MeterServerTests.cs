@@ -69,8 +69,8 @@ public sealed class MeterServerTests
         }
 
         ReadingTaken taken = Assert.Single(bench.Events.OfType<ReadingTaken>());
-        Assert.Equal((4.0, 1.0), (taken.IntegrationMs, taken.TurnaroundMs));
-        Assert.True(taken.Ms >= taken.StartMs + 5.0, $"{taken}");
+        Assert.Equal(4.0, taken.IntegrationMs);
+        Assert.InRange(taken.TurnaroundMs, 1.0, taken.Ms - taken.StartMs - 4.0 + 1e-9);
         Assert.Equal(await reading, taken.Answer);
     }
 

@@ -67,6 +67,6 @@ public sealed class WholeBenchTests
     {
         await Task.Delay(20);
         await bench.SetRangeAsync(state.Meter, state.Range, default);
-        return (await bench.ReadAsync(state.Meter, default)).Volt;
+        return (await bench.ReadAsync(state.Meter, 1, default))[0].Volt;
     }
 }

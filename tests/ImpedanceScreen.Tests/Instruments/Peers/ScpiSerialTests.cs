@@ -1,4 +1,3 @@
-using ImpedanceScreen.Bench;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Instruments.Channels;
 using ImpedanceScreen.Instruments.Scpi;
@@ -26,19 +25,19 @@ public sealed class ScpiSerialTests
         await meter.SetRangeAsync(TestBench.TenVolt, CancellationToken.None);
         for (int i = 1; i <= 20; i++)
         {
-            Assert.Equal(i, (await meter.ReadAsync(CancellationToken.None)).Volt);
+            Assert.Equal(i, (await meter.ReadAsync(1, CancellationToken.None))[0].Volt);
             await peer.ReceivedAsync();
         }
 
         peer.NextAnswers.Enqueue(null);
         using CancellationTokenSource caller = new();
-        Task<MeterReading> cancelled = meter.ReadAsync(caller.Token);
+        Task cancelled = meter.ReadAsync(1, caller.Token);
         await peer.ReceivedAsync();
         await caller.CancelAsync();
         await Assert.ThrowsAnyAsync<OperationCanceledException>(() => cancelled);
         await peer.SendAsync("+7.77000000E+00\r\n");
 
-        Assert.Equal(22.0, (await meter.ReadAsync(CancellationToken.None)).Volt);
+        Assert.Equal(22.0, (await meter.ReadAsync(1, CancellationToken.None))[0].Volt);
         await far.DisposeAsync();
         await serving;
     }
