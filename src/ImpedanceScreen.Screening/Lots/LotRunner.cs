@@ -223,6 +223,7 @@ public sealed class LotRunner
                 return;
             }
 
+            status.Count(end.Record);
             log.LogWarning("attempt at {Serial} aborted: {Cause}", serial, end.Record.Cause);
             await MakeReadyAgainAsync(end, cancellation);
         }
@@ -252,7 +253,6 @@ public sealed class LotRunner
         AttemptEnd end = await new BoardAttempt(bench, attempt, settings, status).RunAsync(cancellation);
         status.Publish(Activity.Recording, "making the record durable", serial, 1);
         await store.AppendAsync(end.Record);
-        status.Count(end.Record);
         return end;
     }
 
@@ -270,6 +270,9 @@ public sealed class LotRunner
         CancellationToken cancellation = leaving.Token;
         status.Publish(Activity.Sorting, $"board goes to {record.Disposition}", record.Serial, 1);
         await handler.SortAsync(record.Disposition, cancellation);
+
+        // Shown while the handler moves: the nest does not wait for a terminal.
+        status.Count(record);
         if (order.Job.Fixture.Handshake is not null)
         {
             await handler.AwaitNoBoardAsync(cancellation);
