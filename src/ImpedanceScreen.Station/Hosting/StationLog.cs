@@ -13,8 +13,18 @@ internal static class StationLog
     /// <summary>Path pattern of the log of a store; the date stands before the ending.</summary>
     public static string PathFor(string storePath, string? folder)
     {
-        string place = folder ?? Path.GetDirectoryName(Path.GetFullPath(storePath)) ?? ".";
+        string place = folder ?? Path.GetDirectoryName(storePath) ?? "";
         return Path.Combine(place, Path.GetFileNameWithoutExtension(storePath) + "-.log");
+    }
+
+    /// <summary>The log file that was written last; the pattern where there is none.</summary>
+    public static string Newest(string pattern)
+    {
+        string folder = Path.GetDirectoryName(pattern) ?? "";
+        string name = Path.GetFileNameWithoutExtension(pattern) + "*" + Path.GetExtension(pattern);
+        string? newest = new DirectoryInfo(Path.GetFullPath(folder.Length > 0 ? folder : "."))
+            .GetFiles(name).OrderBy(file => file.LastWriteTimeUtc).LastOrDefault()?.Name;
+        return newest is null ? pattern : Path.Combine(folder, newest);
     }
 
     public static Serilog.Core.Logger Make(string path) =>

@@ -46,7 +46,7 @@ internal static class LotSummary
         AnsiConsole.MarkupLineInterpolated(
             CultureInfo.InvariantCulture, $"records {request.StorePath}");
         AnsiConsole.MarkupLineInterpolated(
-            CultureInfo.InvariantCulture, $"log     {StationLog.PathFor(request.StorePath, request.LogFolder)}");
+            CultureInfo.InvariantCulture, $"log     {StationLog.Newest(StationLog.PathFor(request.StorePath, request.LogFolder))}");
         if (end is not null)
         {
             AnsiConsole.MarkupLineInterpolated(
