@@ -46,6 +46,7 @@ public sealed class WholeLotTests : IDisposable
         LotEnd end = await ScreenAsync(job, simulated, store, seen);
 
         Assert.True(end.Kind == LotEndKind.Complete, end.Words);
+        Assert.Equal([], seen.Where(board => board.Disposition == Disposition.Aborted).Select(board => board.Cause));
         Assert.Equal(SerialRange.From(FirstSerial, Boards), seen.Select(board => board.Serial));
         await AssertStoredAsync(job, store, seen, end);
         AssertSorted(seen, simulated.Events);
