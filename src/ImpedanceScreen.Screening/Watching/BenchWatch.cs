@@ -106,7 +106,8 @@ public sealed class BenchWatch
         }
         catch
         {
-            await abandoned.CancelAsync();
+            // Here and now: opening the relays must not wait for a free thread.
+            abandoned.Cancel();
             _ = running.ContinueWith(
                 static ended => ended.Exception, CancellationToken.None, TaskContinuationOptions.OnlyOnFaulted,
                 TaskScheduler.Default);

@@ -6,8 +6,8 @@ using ImpedanceScreen.Jobs;
 namespace ImpedanceScreen.Tests.Screening;
 
 /// <summary>
-/// A bench in memory with perfect linear sources: notes every event in order and misbehaves when told to. Time does
-/// not pass in it but for what the test's clock does.
+/// A bench in memory with perfect linear sources: notes every event in order and misbehaves when told to. Time passes
+/// only in the meter, where it is told to integrate.
 /// </summary>
 internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBench
 {
@@ -26,6 +26,9 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
     public IReadOnlySet<Relay> Closed => closed;
 
     public bool CanOpen { get; set; } = true;
+
+    /// <summary>How long the meter integrates.</summary>
+    public TimeSpan Integration { get; set; }
 
     /// <summary>Handshake coils as an earlier process left them.</summary>
     public HandshakeState Handshake
@@ -74,7 +77,7 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
 
     public Task SetRangeAsync(Meter meter, MeterRange range, CancellationToken cancellation) => Task.CompletedTask;
 
-    public Task<IReadOnlyList<MeterReading>> ReadAsync(Meter meter, int count, CancellationToken cancellation)
+    public async Task<IReadOnlyList<MeterReading>> ReadAsync(Meter meter, int count, CancellationToken cancellation)
     {
         List<MeterReading> readings = [];
         while (readings.Count < count)
@@ -82,11 +85,17 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
             cancellation.ThrowIfCancellationRequested();
             Note("read");
             double volt = Volt();
+            if (Integration > TimeSpan.Zero)
+            {
+                await Task.Delay(Integration, time, cancellation);
+                Note("read ends");
+            }
+
             readings.Add(new MeterReading(
                 volt.ToString("E8", CultureInfo.InvariantCulture), ReadingCondition.Valid, volt, time.GetUtcNow()));
         }
 
-        return Task.FromResult<IReadOnlyList<MeterReading>>(readings);
+        return readings;
     }
 
     public Task<double?> ReadTemperatureAsync(CancellationToken cancellation) => Task.FromResult<double?>(23.0);

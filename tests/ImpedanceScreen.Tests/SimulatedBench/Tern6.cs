@@ -19,9 +19,12 @@ internal static class Tern6
 
     public static FixtureFile Fixture { get; } = FixtureFileBinder.Bind(Read(FixturePath)).Value;
 
-    public static ScreeningJob Job { get; } = JobBinder.Bind(Limits, Fixture).Value;
+    public static ScreeningJob Job { get; } = JobOn("simulated-bench.yaml");
 
     public static Population Population { get; } = PopulationFileBinder.Bind(Read(PopulationPath), Limits).Value;
+
+    public static ScreeningJob JobOn(string fixtureName) =>
+        JobBinder.Bind(Limits, FixtureFileBinder.Bind(Read(Shipped("fixtures", fixtureName))).Value).Value;
 
     public static FileText Read(string path) => new(path, File.ReadAllText(path));
 
