@@ -8,7 +8,8 @@ using Microsoft.Data.Sqlite;
 namespace ImpedanceScreen.Records;
 
 /// <summary>
-/// Reads a whole store, record by record with flat memory, and compares everything in it with everything else. What it cannot
+/// Reads a whole store, record by record with flat memory, and compares everything in it with everything else. What
+/// it cannot
 /// tell: changes by someone who holds the station key and rewrites the chain from there on, unless the head was
 /// copied elsewhere; rows of attempts that never got a record; whether a recorded attempt's handshake ended, which is
 /// noted after its record and outside the chain.

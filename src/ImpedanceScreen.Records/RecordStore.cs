@@ -33,19 +33,22 @@ public sealed class RecordStore : IRecordStore
     public ChainHead Head => head;
 
     /// <summary>
-    /// Makes a store, its station key (<c>FILE.key</c>, mode 0600) and record 0, all durable. Nothing else ever makes one.
+    /// Makes a store, its station key (<c>FILE.key</c>, mode 0600) and record 0, all durable. Nothing else ever makes
+    /// one.
     /// </summary>
     /// <param name="path">The store's file; neither it nor its key may exist.</param>
     /// <param name="station">The station's name.</param>
     /// <param name="programVersion">Version of the program.</param>
     /// <param name="time">Clock for record 0.</param>
-    /// <exception cref="IOException">A file is there already, or cannot be written; the message says what to do.</exception>
+    /// <exception cref="IOException">A file is there already, or cannot be written; the message says what to
+    /// do.</exception>
     public static void Create(string path, string station, string programVersion, TimeProvider time) =>
         StoreCreation.Create(path, station, programVersion, time);
 
     /// <summary>Opens a store.</summary>
     /// <exception cref="FileNotFoundException">There is none; the message says how to make one.</exception>
-    /// <exception cref="IOException">It lies on a network, its key is missing, or head and records do not fit.</exception>
+    /// <exception cref="IOException">It lies on a network, its key is missing, or head and records do not
+    /// fit.</exception>
     /// <exception cref="InvalidOperationException">The file is no record store of this version.</exception>
     public static RecordStore Open(string path) => Open(path, (_, action) => action());
 
@@ -151,7 +154,8 @@ public sealed class RecordStore : IRecordStore
     public Task<LotCounts> CountLotAsync(string lot) =>
         RunAsync(connection => StoreQueries.CountLot(connection, lot));
 
-    /// <summary>Moves the write-ahead log into the file and cuts it; between lots, so that it does not grow for ever.</summary>
+    /// <inheritdoc/>
+    /// <remarks>Moves the write-ahead log into the file and cuts it.</remarks>
     public Task CheckpointAsync() => RunAsync(connection => connection.Pragma("wal_checkpoint(TRUNCATE)"));
 
     /// <summary>Works off what is under way and closes the file.</summary>

@@ -15,7 +15,9 @@ internal static class ExitCode
     /// <summary>The board is to be screened again, or its attempt was aborted.</summary>
     public const int Retest = 3;
 
-    /// <summary>The bench waits for a person: relays not proved open, instrument lost, identity of a board unknown.</summary>
+    /// <summary>
+    /// The bench waits for a person: relays not proved open, instrument lost, identity of a board unknown.
+    /// </summary>
     public const int OnHold = 4;
 
     /// <summary>Records cannot be made durable.</summary>

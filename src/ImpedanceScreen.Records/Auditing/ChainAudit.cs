@@ -6,7 +6,10 @@ using ImpedanceScreen.Records.Sealing;
 
 namespace ImpedanceScreen.Records.Auditing;
 
-/// <summary>Follows the chain record by record. After a finding it goes on from what is stored, so that one tampering is named once.</summary>
+/// <summary>
+/// Follows the chain record by record. After a finding it goes on from what is stored, so that one tampering is named
+/// once.
+/// </summary>
 internal sealed class ChainAudit(Findings findings, RowAudit rows, ChainHead? known)
 {
     private byte[] link = ChainLink.Origin;

@@ -5,7 +5,9 @@ using Microsoft.Data.Sqlite;
 
 namespace ImpedanceScreen.Records.Auditing;
 
-/// <summary>Compares the rows that hang on a record with its body: columns, results, attempt, texts, signature.</summary>
+/// <summary>
+/// Compares the rows that hang on a record with its body: columns, results, attempt, texts, signature.
+/// </summary>
 internal sealed class RowAudit(StoreConnection connection, Findings findings)
 {
     private static readonly string[] ColumnNames =

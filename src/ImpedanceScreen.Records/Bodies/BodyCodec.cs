@@ -5,7 +5,8 @@ using ImpedanceScreen.Records.Canonical;
 namespace ImpedanceScreen.Records.Bodies;
 
 /// <summary>
-/// Records to canonical bodies and back. Every body names its <c>kind</c> and <c>format</c>; a released format is never changed, a new
+/// Records to canonical bodies and back. Every body names its <c>kind</c> and <c>format</c>; a released format is
+/// never changed, a new
 /// one gets the next number and this class goes on reading the old.
 /// </summary>
 public static class BodyCodec
@@ -14,7 +15,8 @@ public static class BodyCodec
     public const int Format = 1;
 
     /// <summary>The canonical body of a record, UTF-8.</summary>
-    /// <exception cref="ArgumentException">It holds an infinite number, a lone surrogate, or is of an unknown kind.</exception>
+    /// <exception cref="ArgumentException">It holds an infinite number, a lone surrogate, or is of an unknown
+    /// kind.</exception>
     public static byte[] Encode(Record record)
     {
         var writer = new CanonicalWriter();
@@ -69,7 +71,9 @@ public static class BodyCodec
         }
     }
 
-    /// <summary>Writes the two members that every body has; their names stand next to each other in every kind.</summary>
+    /// <summary>
+    /// Writes the two members that every body has; their names stand next to each other in every kind.
+    /// </summary>
     internal static void Identify(CanonicalWriter writer, Record record)
     {
         writer.Integer("format", Format);

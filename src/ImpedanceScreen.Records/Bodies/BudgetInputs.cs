@@ -6,7 +6,8 @@ using ImpedanceScreen.Records.Canonical;
 namespace ImpedanceScreen.Records.Bodies;
 
 /// <summary>
-/// The inputs of all uncertainty budgets of a board, each once: budgets name an input by its place in these lists, counted
+/// The inputs of all uncertainty budgets of a board, each once: budgets name an input by its place in these lists,
+/// counted
 /// from 0.
 /// </summary>
 internal sealed class BudgetInputs

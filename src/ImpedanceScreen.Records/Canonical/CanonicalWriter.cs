@@ -4,7 +4,8 @@ using System.Text;
 namespace ImpedanceScreen.Records.Canonical;
 
 /// <summary>
-/// Writes canonical JSON (RFC 8785) straight away: names must come in the order of their UTF-16 code units, so that nothing is sorted
+/// Writes canonical JSON (RFC 8785) straight away: names must come in the order of their UTF-16 code units, so that
+/// nothing is sorted
 /// or held; a name out of order or given twice is refused. Not for several threads.
 /// </summary>
 public sealed class CanonicalWriter

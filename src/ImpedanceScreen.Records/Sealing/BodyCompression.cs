@@ -4,7 +4,8 @@ using System.IO.Compression;
 namespace ImpedanceScreen.Records.Sealing;
 
 /// <summary>
-/// Packs bodies with raw DEFLATE (RFC 1951) behind a preset dictionary, as <c>deflateSetDictionary</c> of zlib does: the
+/// Packs bodies with raw DEFLATE (RFC 1951) behind a preset dictionary, as <c>deflateSetDictionary</c> of zlib does:
+/// the
 /// dictionary is packed first and what it gave is left out. DEFLATE carries nothing from block to block but the window,
 /// so any stream that yields the dictionary may stand in its place when unpacking. The body's length stands before it
 /// (4 bytes, most significant first): a stream that was cut ends without a sign.

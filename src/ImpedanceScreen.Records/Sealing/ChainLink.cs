@@ -13,7 +13,8 @@ public static class ChainLink
     public static byte[] Origin => new byte[Length];
 
     /// <summary>
-    /// SHA-256 (FIPS 180-4) of 72 bytes: the previous link (32), the sequence number (8, most significant first), the body's
+    /// SHA-256 (FIPS 180-4) of 72 bytes: the previous link (32), the sequence number (8, most significant first), the
+    /// body's
     /// hash (32).
     /// </summary>
     public static byte[] Next(ReadOnlySpan<byte> previousLink, long sequence, ReadOnlySpan<byte> bodyHash)

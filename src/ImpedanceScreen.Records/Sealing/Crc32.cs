@@ -1,6 +1,8 @@
 namespace ImpedanceScreen.Records.Sealing;
 
-/// <summary>CRC-32 as of IEEE 802.3 (reflected polynomial 0xEDB88320): finds a damaged disk block before anything is unpacked.</summary>
+/// <summary>
+/// CRC-32 as of IEEE 802.3 (reflected polynomial 0xEDB88320): finds a damaged disk block before anything is unpacked.
+/// </summary>
 internal static class Crc32
 {
     private static readonly uint[] Table = MakeTable();

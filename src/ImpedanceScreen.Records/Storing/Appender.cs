@@ -4,7 +4,9 @@ using Microsoft.Data.Sqlite;
 
 namespace ImpedanceScreen.Records.Storing;
 
-/// <summary>The one function that appends to a chain. A failure at any step leaves the connection unfit for use: reopen it.</summary>
+/// <summary>
+/// The one function that appends to a chain. A failure at any step leaves the connection unfit for use: reopen it.
+/// </summary>
 internal sealed class Appender(StoreConnection connection, StationKey key, AppendSeam seam)
 {
     private const string InsertRecordSql = """

@@ -9,7 +9,9 @@ namespace ImpedanceScreen.Records.Storing;
 /// </summary>
 internal static partial class DurableFile
 {
-    /// <summary>Writes a file that must not exist yet, readable by its owner only, and syncs it and its folder.</summary>
+    /// <summary>
+    /// Writes a file that must not exist yet, readable by its owner only, and syncs it and its folder.
+    /// </summary>
     public static void WriteNewSecret(string path, string content)
     {
         var options = new FileStreamOptions { Mode = FileMode.CreateNew, Access = FileAccess.Write };

@@ -2,7 +2,9 @@ using System.Security.Cryptography;
 
 namespace ImpedanceScreen.Records.Storing;
 
-/// <summary>The key with which a station signs the head of a closed lot: ECDSA on P-256 with SHA-256 (FIPS 186-5).</summary>
+/// <summary>
+/// The key with which a station signs the head of a closed lot: ECDSA on P-256 with SHA-256 (FIPS 186-5).
+/// </summary>
 internal sealed class StationKey : IDisposable
 {
     private readonly ECDsa key;

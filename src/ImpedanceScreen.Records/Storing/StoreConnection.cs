@@ -4,7 +4,8 @@ using Microsoft.Data.Sqlite;
 namespace ImpedanceScreen.Records.Storing;
 
 /// <summary>
-/// One connection to a store, set up so that a commit is durable when it returns, and asserted to be so. Statements are prepared once and
+/// One connection to a store, set up so that a commit is durable when it returns, and asserted to be so. Statements
+/// are prepared once and
 /// reused. For one thread.
 /// </summary>
 internal sealed class StoreConnection : IDisposable

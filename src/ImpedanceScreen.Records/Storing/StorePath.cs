@@ -25,7 +25,9 @@ internal static class StorePath
         RequireLocal(path);
     }
 
-    /// <summary>Refuses a folder on another machine: the write-ahead log needs shared memory and honest locks.</summary>
+    /// <summary>
+    /// Refuses a folder on another machine: the write-ahead log needs shared memory and honest locks.
+    /// </summary>
     /// <exception cref="IOException">It is a network file system.</exception>
     public static void RequireLocal(string path)
     {

@@ -5,7 +5,8 @@ using Microsoft.Data.Sqlite;
 namespace ImpedanceScreen.Records.Storing;
 
 /// <summary>
-/// The writer's connection, replaced whole whenever an append failed: what such a connection still holds is unknown. For
+/// The writer's connection, replaced whole whenever an append failed: what such a connection still holds is unknown.
+/// For
 /// the writer thread only.
 /// </summary>
 internal sealed class StoreSession(string path, StationKey key, AppendSeam seam) : IDisposable

@@ -9,7 +9,9 @@ namespace ImpedanceScreen.Screening.Attempts;
 /// </summary>
 public static class BenchFloor
 {
-    /// <summary>Declared contact times and settling of every load point, warm-up, and contact times of the proof of discharge.</summary>
+    /// <summary>
+    /// Declared contact times and settling of every load point, warm-up, and contact times of the proof of discharge.
+    /// </summary>
     /// <param name="record">What was read.</param>
     /// <param name="job">What was declared.</param>
     /// <param name="timeScale">Factor on declared waits.</param>

@@ -4,7 +4,8 @@ namespace ImpedanceScreen.Screening.Attempts;
 /// <param name="Station">Station name.</param>
 /// <param name="ProgramVersion">Version of the program.</param>
 /// <param name="Meters">Identity of each meter by its name in the fixture file.</param>
-/// <param name="TimeScale">Factor on settle, warm-up and contact times: 1 on a real bench, smaller on a simulated one.</param>
+/// <param name="TimeScale">Factor on settle, warm-up and contact times: 1 on a real bench, smaller on a simulated
+/// one.</param>
 /// <param name="Time">Clock.</param>
 /// <param name="Arithmetic">Where results are computed.</param>
 public sealed record BenchSettings(

@@ -46,7 +46,8 @@ public sealed class BoardAttempt
     }
 
     /// <summary>Runs the attempt.</summary>
-    /// <param name="cancellation">Ends the attempt early: relays open, disposition aborted. Never throws for it.</param>
+    /// <param name="cancellation">Ends the attempt early: relays open, disposition aborted. Never throws for
+    /// it.</param>
     public async Task<AttemptEnd> RunAsync(CancellationToken cancellation)
     {
         Exception? interruption = null;

@@ -45,7 +45,8 @@ internal static class BoardDisposition
             ", ",
             result.Decisions
                 .Where(limit => limit.Decision != Decision.Pass)
-                .Select(limit => $"{Words(limit.Quantity)} {(limit.Decision == Decision.Fail ? "outside its limit" : "undecided")}"));
+                .Select(limit =>
+                    $"{Words(limit.Quantity)} {(limit.Decision == Decision.Fail ? "outside its limit" : "undecided")}"));
     }
 
     private static string Words(Quantity quantity) => quantity switch

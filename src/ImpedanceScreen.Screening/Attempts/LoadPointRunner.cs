@@ -16,7 +16,8 @@ internal sealed class LoadPointRunner(
 {
     // Which sense relay is closed at each meter: a meter sees one output at a time.
     private readonly Dictionary<string, Relay> sensed = [];
-    private readonly HashSet<Relay> loadRelays = [.. job.Fixture.LoadBanks.SelectMany(bank => bank.Loads, (_, load) => load.Relay)];
+    private readonly HashSet<Relay> loadRelays =
+        [.. job.Fixture.LoadBanks.SelectMany(bank => bank.Loads, (_, load) => load.Relay)];
 
     // Where the far ends of the loads go: the same for all lanes of a wave, so that no lane opens it for another.
     private Relay? loadReturn;

@@ -9,7 +9,8 @@ internal static class Schedule
 {
     /// <summary>
     /// Waves, one after another. States of one wave share the load return; each of its lanes holds what shares a load
-    /// bank or a group, since outputs loaded at once would otherwise shift one another through common return and supply.
+    /// bank or a group, since outputs loaded at once would otherwise shift one another through common return and
+    /// supply.
     /// </summary>
     public static IEnumerable<IReadOnlyList<Lane>> Waves(ScreeningJob job) =>
         job.States.GroupBy(state => state.LoadReturn?.Name).Select(wave => Lanes(wave, DiagnosticAlarm.TestsOf(job)));

@@ -8,6 +8,7 @@ namespace ImpedanceScreen.Screening.Lots;
 /// <param name="Lot">Lot name; null for boards outside any lot, which are not closed.</param>
 /// <param name="Operator">Operator; null where not stated.</param>
 /// <param name="Serials">Where serial numbers come from.</param>
-/// <param name="BoardInNest">Serial number of a board that lies in the nest from before, where a person has read it.</param>
+/// <param name="BoardInNest">Serial number of a board that lies in the nest from before, where a person has read
+/// it.</param>
 public sealed record LotOrder(
     ScreeningJob Job, string? Lot, string? Operator, ISerialSource Serials, string? BoardInNest);

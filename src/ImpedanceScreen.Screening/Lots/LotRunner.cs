@@ -10,7 +10,8 @@ using Microsoft.Extensions.Logging;
 namespace ImpedanceScreen.Screening.Lots;
 
 /// <summary>
-/// The bench loop: the only caller of the bench. Starts it safe, puts the unfinished of an earlier process in order, then screens board after
+/// The bench loop: the only caller of the bench. Starts it safe, puts the unfinished of an earlier process in order,
+/// then screens board after
 /// board until the serial numbers end or something says stop.
 /// </summary>
 public sealed class LotRunner
@@ -114,6 +115,7 @@ public sealed class LotRunner
             await store.AppendAsync(new LotCloseRecord(
                 lot, order.Job.Limits.Product, order.Operator, startedAt, run.Time.GetUtcNow(), counts.Boards,
                 counts.Passed, counts.Failed, counts.Retest, counts.Aborted, run.ProgramVersion));
+            await store.CheckpointAsync();
         }
     }
 
@@ -131,7 +133,9 @@ public sealed class LotRunner
         return start;
     }
 
-    /// <summary>Attempts of an earlier process without a record get one; says which serial number to screen first.</summary>
+    /// <summary>
+    /// Attempts of an earlier process without a record get one; says which serial number to screen first.
+    /// </summary>
     private async Task<string?> RecoverAsync(
         HandshakeState? found, DateTimeOffset now, CancellationToken cancellation)
     {

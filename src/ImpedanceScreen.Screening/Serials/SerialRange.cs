@@ -8,7 +8,8 @@ public static class SerialRange
     /// <summary>
     /// Counts up from a serial number that ends in digits; their number is kept: <c>T6-000009</c>, <c>T6-000010</c>.
     /// </summary>
-    /// <exception cref="FormatException">It does not end in digits, or the digits do not suffice for the count.</exception>
+    /// <exception cref="FormatException">It does not end in digits, or the digits do not suffice for the
+    /// count.</exception>
     public static IReadOnlyList<string> From(string first, int count)
     {
         ArgumentNullException.ThrowIfNull(first);

@@ -79,7 +79,8 @@ public sealed class BenchWatch
         BesideAsync(operation, _ => Task.CompletedTask, cancellation);
 
     /// <summary>
-    /// Runs an operation on another link; beside it, relay work first, then reading the inputs. A broken interlock cancels the operation and
+    /// Runs an operation on another link; beside it, relay work first, then reading the inputs. A broken interlock
+    /// cancels the operation and
     /// is reported without waiting for it to unwind.
     /// </summary>
     public async Task<T> BesideAsync<T>(

@@ -3,6 +3,7 @@ using ImpedanceScreen.Files;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Limits;
+using ImpedanceScreen.Station.Hosting;
 
 namespace ImpedanceScreen.Station.Commands;
 
@@ -40,6 +41,11 @@ internal static class ValidateCommand
         foreach (Mistake mistake in mistakes)
         {
             Console.WriteLine(mistake);
+        }
+
+        foreach (string warning in fixture is null ? [] : CalibrationWarnings.Of(fixture))
+        {
+            Console.Error.WriteLine(warning);
         }
 
         string files = string.Join(" and ", new[] { limitsPath, fixturePath }.OfType<string>());

@@ -33,6 +33,12 @@ internal static class ScreeningSession
         ScreeningJob job = JobFiles.Load(request.LimitsPath, request.FixturePath);
         SerialChoice serials = choose(job);
         await using Serilog.Core.Logger log = StationLog.Make(StationLog.PathFor(request.StorePath, request.LogFolder));
+        foreach (string warning in CalibrationWarnings.Of(job.Fixture))
+        {
+            log.Warning("{Warning}", warning);
+            await Console.Error.WriteLineAsync(warning);
+        }
+
         await using SimulatedBenchProcess? simulated = await StartSimulatedAsync(request, job, serials, cancellation);
         job = simulated is null ? job : job with { Fixture = simulated.Rewire(job.Fixture) };
         using FixtureLock held = FixtureLock.Take(job.Fixture);

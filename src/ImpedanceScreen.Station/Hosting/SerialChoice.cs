@@ -6,5 +6,6 @@ namespace ImpedanceScreen.Station.Hosting;
 /// <param name="Source">The source.</param>
 /// <param name="BoardInNest">Serial number of a board that lies in the nest, where a person has read it.</param>
 /// <param name="Boards">How many boards there will be; null where not known.</param>
-/// <param name="Listed">The serial numbers in the order of the boards; empty where they are read off the boards.</param>
+/// <param name="Listed">The serial numbers in the order of the boards; empty where they are read off the
+/// boards.</param>
 internal sealed record SerialChoice(ISerialSource Source, string? BoardInNest, int? Boards, IReadOnlyList<string> Listed);

@@ -19,7 +19,8 @@ internal sealed class BoardView : IResultView
     {
         LastDisposition = record.Disposition;
         AnsiConsole.MarkupLineInterpolated(
-            CultureInfo.InvariantCulture, $"[bold]{record.Product}[/] revision {record.Revision}, serial [bold]{record.Serial}[/], attempt {record.Attempt}");
+            CultureInfo.InvariantCulture,
+            $"[bold]{record.Product}[/] revision {record.Revision}, serial [bold]{record.Serial}[/], attempt {record.Attempt}");
         bool wide = AnsiConsole.Profile.Width >= WidthOfAllColumns;
         string[] columns = wide
             ? ["output", "quantity", "value ± U (95 %)", "limits", "decision", "guard band", "P(conforms)"]
@@ -40,7 +41,8 @@ internal sealed class BoardView : IResultView
 
         TimeSpent time = record.TimeSpent;
         AnsiConsole.MarkupLineInterpolated(
-            CultureInfo.InvariantCulture, $"{record.EndedAt - record.StartedAt:s\\.ff} s: switching {time.SwitchingMs} ms, settling {time.SettlingMs} ms, integrating {time.IntegratingMs} ms, talking {time.TalkingMs} ms, other {time.OtherMs} ms");
+            CultureInfo.InvariantCulture,
+            $"{record.EndedAt - record.StartedAt:s\\.ff} s: switching {time.SwitchingMs} ms, settling {time.SettlingMs} ms, integrating {time.IntegratingMs} ms, talking {time.TalkingMs} ms, other {time.OtherMs} ms");
         AnsiConsole.MarkupLineInterpolated(
             CultureInfo.InvariantCulture, $"[bold]{Words(record.Disposition)}[/] {record.Cause}");
     }

@@ -15,13 +15,15 @@ internal static class LotSummary
         AnsiConsole.MarkupLineInterpolated(
             CultureInfo.InvariantCulture, $"[bold]lot {request.Lot}[/]: {EndWords.Of(end)}");
         AnsiConsole.MarkupLineInterpolated(
-            CultureInfo.InvariantCulture, $"{tally.Screened} boards: {tally.Passed} pass, {tally.Failed} fail, {tally.Retest} retest; {tally.Aborted} attempts aborted");
+            CultureInfo.InvariantCulture,
+            $"{tally.Screened} boards: {tally.Passed} pass, {tally.Failed} fail, {tally.Retest} retest; {tally.Aborted} attempts aborted");
         if (tally.Screened > 0)
         {
             AnsiConsole.MarkupLineInterpolated(
             CultureInfo.InvariantCulture, $"yield {Ratio(100.0 * tally.Passed / tally.Screened, "0.0")} %");
             AnsiConsole.MarkupLineInterpolated(
-            CultureInfo.InvariantCulture, $"median time a board {Ratio(tally.MedianSeconds, "0.00")} s, {Ratio(tally.MedianOverFloor, "0.000")} times the bench floor");
+            CultureInfo.InvariantCulture,
+            $"median time a board {Ratio(tally.MedianSeconds, "0.00")} s, {Ratio(tally.MedianOverFloor, "0.000")} times the bench floor");
             AnsiConsole.MarkupLineInterpolated(
                 CultureInfo.InvariantCulture, $"(declared waits and integration); {Ratio(elapsed.TotalSeconds, "0.0")} s in all");
         }

@@ -6,7 +6,9 @@ using ImpedanceScreen.Station.Commands;
 
 namespace ImpedanceScreen.Station.Simulated;
 
-/// <summary>The simulated bench's executable, started beside the station; it ends when its standard input closes.</summary>
+/// <summary>
+/// The simulated bench's executable, started beside the station; it ends when its standard input closes.
+/// </summary>
 internal sealed class SimulatedBenchProcess : IAsyncDisposable
 {
     private const int StartLimitMs = 20_000;

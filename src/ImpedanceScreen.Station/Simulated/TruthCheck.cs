@@ -35,7 +35,8 @@ internal sealed class TruthCheck(string truthPath)
             }
         }
 
-        return $"simulated truth: {bad} of {decided.Count} boards bad; escapes {List(escapes)}; false rejects {List(falseRejects)}";
+        return $"simulated truth: {bad} of {decided.Count} boards bad; "
+            + $"escapes {List(escapes)}; false rejects {List(falseRejects)}";
     }
 
     private static string List(List<string> serials) =>

@@ -19,13 +19,15 @@ public interface IBench : IAsyncDisposable
     Task<InputState> PollInputsAsync(CancellationToken cancellation);
 
     /// <summary>
-    /// Switches relays: opens first, waits their release time, closes then, and reads the coils back. Returns when the last coil is
+    /// Switches relays: opens first, waits their release time, closes then, and reads the coils back. Returns when
+    /// the last coil is
     /// acknowledged and confirmed; the contact is at rest only after <see cref="Switched.ContactTime"/> more.
     /// </summary>
     Task<Switched> SwitchAsync(SwitchOrder order, CancellationToken cancellation);
 
     /// <summary>
-    /// Reads the mirror contacts that are wired and compares them with what is commanded; call it when the contacts are at rest.
+    /// Reads the mirror contacts that are wired and compares them with what is commanded; call it when the contacts
+    /// are at rest.
     /// </summary>
     Task<ContactCheck> CheckContactsAsync(CancellationToken cancellation);
 
@@ -33,7 +35,8 @@ public interface IBench : IAsyncDisposable
     Task SetRangeAsync(Meter meter, MeterRange range, CancellationToken cancellation);
 
     /// <summary>
-    /// Takes readings one right after another. When cancelled or timed out the meter's link is dirty: the next use drains
+    /// Takes readings one right after another. When cancelled or timed out the meter's link is dirty: the next use
+    /// drains
     /// or reopens it and asks for the identity first.
     /// </summary>
     Task<IReadOnlyList<MeterReading>> ReadAsync(Meter meter, int count, CancellationToken cancellation);
@@ -42,7 +45,8 @@ public interface IBench : IAsyncDisposable
     Task<double?> ReadTemperatureAsync(CancellationToken cancellation);
 
     /// <summary>
-    /// Opens every load, selector, sense, stimulus, return and supply relay. Has its own deadline, opens a new link where the old one is
+    /// Opens every load, selector, sense, stimulus, return and supply relay. Has its own deadline, opens a new link
+    /// where the old one is
     /// doubtful, tries until confirmed by reading back, and reports an alarm rather than throw.
     /// </summary>
     Task<AllOpenOutcome> OpenAllAsync();
@@ -58,7 +62,8 @@ public interface IBench : IAsyncDisposable
 
 /// <summary>What the start of a bench found.</summary>
 /// <param name="AllOpen">Whether all relays were proved open.</param>
-/// <param name="Handshake">The handshake coils as found, before anything was switched; null where there are none.</param>
+/// <param name="Handshake">The handshake coils as found, before anything was switched; null where there are
+/// none.</param>
 /// <param name="Meters">The identity of each meter by its name in the fixture file.</param>
 public sealed record BenchStart(
     AllOpenOutcome AllOpen, HandshakeState? Handshake, IReadOnlyDictionary<string, string> Meters);
@@ -75,7 +80,8 @@ public sealed record SwitchOrder(IReadOnlyList<Relay> Open, IReadOnlyList<Relay>
 
 /// <summary>A switching that was acknowledged and whose coils were read back as commanded.</summary>
 /// <param name="AcknowledgedTimestamp">Time-provider timestamp at the last coil's acknowledgement.</param>
-/// <param name="ContactTime">Longest declared operate or release time of what was switched last, shortened by the time scale of a simulated bench.</param>
+/// <param name="ContactTime">Longest declared operate or release time of what was switched last, shortened by the
+/// time scale of a simulated bench.</param>
 public readonly record struct Switched(long AcknowledgedTimestamp, TimeSpan ContactTime);
 
 /// <summary>Mirror contacts against commands.</summary>

@@ -11,7 +11,8 @@ namespace ImpedanceScreen.Decisions;
 /// <param name="Max">Upper limit; null where none.</param>
 /// <param name="GuardFactor">Factor of the decision rule.</param>
 /// <param name="GuardBand">Guard band w in the quantity's unit.</param>
-/// <param name="ConformityProbability">Probability that the true value lies within the limits (JCGM 106:2012, clause 7); NaN where there is no estimate.</param>
+/// <param name="ConformityProbability">Probability that the true value lies within the limits (JCGM 106:2012, clause
+/// 7); NaN where there is no estimate.</param>
 /// <param name="Decision">The decision.</param>
 public sealed record LimitDecision(
     Quantity Quantity,

@@ -10,7 +10,8 @@ namespace ImpedanceScreen.Fixtures;
 /// <param name="LoadBank">Name of its load bank.</param>
 /// <param name="Group">Outputs of one group share return and supply: no two of them are loaded at once.</param>
 /// <param name="Sensing">Where the meter senses.</param>
-/// <param name="LeadOhm">Lead resistance, both conductors, Ω, contact variation within its standard uncertainty.</param>
+/// <param name="LeadOhm">Lead resistance, both conductors, Ω, contact variation within its standard
+/// uncertainty.</param>
 /// <param name="LoadCurrentProof">What proves that load current flows.</param>
 public sealed record FixtureOutput(
     string Name,

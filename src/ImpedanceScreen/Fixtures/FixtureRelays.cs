@@ -15,7 +15,9 @@ public static class FixtureRelays
         return names;
     }
 
-    /// <summary>Every relay whose contact lies in the measuring circuit: load, return, selector, sense, stimulus, supply.</summary>
+    /// <summary>
+    /// Every relay whose contact lies in the measuring circuit: load, return, selector, sense, stimulus, supply.
+    /// </summary>
     public static IEnumerable<Relay> Switching(FixtureFile fixture) => Named(fixture).Select(named => named.Relay);
 
     /// <summary>Relays that only tell the handler something: bins, busy, done.</summary>

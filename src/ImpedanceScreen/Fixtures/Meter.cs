@@ -23,8 +23,10 @@ public sealed record Meter(
 
 /// <summary>One DC-volts range of a meter at its integration time.</summary>
 /// <param name="FullScaleVolt">Full scale, V.</param>
-/// <param name="GainLimit">Accuracy, part of reading (25 ppm is 25e-6): half width of a rectangular distribution.</param>
-/// <param name="OffsetLimitVolt">Accuracy, part of range, V: half width of a rectangular distribution, common to all readings of the range.</param>
+/// <param name="GainLimit">Accuracy, part of reading (25 ppm is 25e-6): half width of a rectangular
+/// distribution.</param>
+/// <param name="OffsetLimitVolt">Accuracy, part of range, V: half width of a rectangular distribution, common to all
+/// readings of the range.</param>
 /// <param name="NoiseVolt">Pooled standard deviation of one reading, V.</param>
 /// <param name="NoiseDegreesOfFreedom">Degrees of freedom of that pooled value, at least 50.</param>
 /// <param name="ResolutionVolt">Smallest step, V.</param>

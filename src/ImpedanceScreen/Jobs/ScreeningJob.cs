@@ -3,7 +3,9 @@ using ImpedanceScreen.Limits;
 
 namespace ImpedanceScreen.Jobs;
 
-/// <summary>A product's limits bound to a fixture and found to fit it: everything the way of a board needs to know.</summary>
+/// <summary>
+/// A product's limits bound to a fixture and found to fit it: everything the way of a board needs to know.
+/// </summary>
 /// <param name="Limits">The limit file.</param>
 /// <param name="Fixture">The fixture file.</param>
 /// <param name="States">Every output in every drive state, in the order in which they are screened.</param>

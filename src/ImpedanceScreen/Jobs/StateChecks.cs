@@ -1,4 +1,6 @@
 using System.Globalization;
+using ImpedanceScreen.Decisions;
+using ImpedanceScreen.Estimation;
 using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Limits;
 using ImpedanceScreen.Quantities;
@@ -101,6 +103,29 @@ internal static class StateChecks
                 job.State.LoadReturn is null ? "nominal.source_voltage_v" : "load_return",
                 "no load current flows: the load returns to the output's own voltage",
                 "return the loads of this state to a rail of another voltage");
+        }
+    }
+
+    /// <summary>Guard bands of the planned uncertainty must leave something that can pass.</summary>
+    internal static void CheckAcceptance(StateJob job, FixtureFile fixture, JobMistakes mistakes)
+    {
+        Uncertain? temperature = fixture.TemperatureSensor is { } sensor
+            ? new Uncertain(job.Loads[0].CalibrationTemperatureDegC, sensor.StandardUncertaintyDegC)
+            : null;
+        IReadOnlyList<double> planned = PlannedUncertainty.Of(job, temperature);
+        for (int i = 0; i < planned.Count; i++)
+        {
+            QuantityLimit limit = job.State.Limits[i];
+            if (AcceptanceZone.IsEmpty(limit, planned[i]))
+            {
+                mistakes.AtState(
+                    "limits." + QuantityLimitReader.KeyOf(limit.Quantity),
+                    double.IsInfinity(planned[i])
+                        ? "the plan cannot determine it, so that nothing could pass"
+                        : Invariant(
+                            $"guard bands of {limit.Rule.GuardFactor:G3} x {planned[i]:G3} leave nothing that could pass"),
+                    "widen the limits, lower `guard_factor`, or plan more readings or a heavier load");
+            }
         }
     }
 

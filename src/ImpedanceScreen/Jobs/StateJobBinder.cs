@@ -42,6 +42,11 @@ internal static class StateJobBinder
         StateChecks.CheckRatedLoad(job, mistakes);
         StateChecks.CheckProof(job, mistakes);
         StateChecks.CheckCurrentFlows(job, mistakes);
+        if (mistakes.Count == before)
+        {
+            StateChecks.CheckAcceptance(job, fixture, mistakes);
+        }
+
         return job;
     }
 

@@ -7,7 +7,8 @@ namespace ImpedanceScreen.Limits;
 /// <param name="Product">Product name.</param>
 /// <param name="Revision">Product revision; text, never a number.</param>
 /// <param name="SerialPattern">Regular expression that a whole serial number matches.</param>
-/// <param name="VoltageCeilingVolt">The highest DC voltage on the board, V; at most 60 (the program's own scope).</param>
+/// <param name="VoltageCeilingVolt">The highest DC voltage on the board, V; at most 60 (the program's own
+/// scope).</param>
 /// <param name="Undecided">What becomes of a board that is still undecided.</param>
 /// <param name="Outputs">The outputs, in the order in which they are screened.</param>
 /// <param name="VoltageCeilingVoltAcRms">Highest AC voltage on the board, V rms, at most 25; null for none.</param>

@@ -16,7 +16,8 @@ public enum Quantity
 /// <summary>A one- or two-sided limit with its decision rule.</summary>
 /// <param name="Quantity">What is limited.</param>
 /// <param name="Min">Lower limit in the quantity's unit; null where there is none.</param>
-/// <param name="Max">Upper limit in the quantity's unit; null where there is none. At least one of the two is given.</param>
+/// <param name="Max">Upper limit in the quantity's unit; null where there is none. At least one of the two is
+/// given.</param>
 /// <param name="Rule">How uncertainty enters the decision.</param>
 /// <param name="RatedLoadOhm">The rated load of a droop limit, Ω; null for the other quantities.</param>
 public sealed record QuantityLimit(

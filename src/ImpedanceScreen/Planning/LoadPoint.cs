@@ -19,7 +19,8 @@ public sealed record LoadPoint(Load? Load, Sensed Sensed = Sensed.Output);
 
 /// <summary>Readings taken at one load point, in the order in which they were taken.</summary>
 /// <param name="Point">The load point.</param>
-/// <param name="ContactProved">True where the load relay's mirror contact read closed, false where it read open, null where it is not wired or there is no load.</param>
+/// <param name="ContactProved">True where the load relay's mirror contact read closed, false where it read open, null
+/// where it is not wired or there is no load.</param>
 /// <param name="Readings">The readings.</param>
 public sealed record LoadPointReadings(LoadPoint Point, bool? ContactProved, IReadOnlyList<Bench.MeterReading> Readings);
 

@@ -3,7 +3,9 @@ using ImpedanceScreen.Estimation;
 
 namespace ImpedanceScreen.Recording;
 
-/// <summary>Everything about one attempt: what it was measured with, every raw reading, what was decided and why.</summary>
+/// <summary>
+/// Everything about one attempt: what it was measured with, every raw reading, what was decided and why.
+/// </summary>
 /// <param name="AttemptId">The attempt's own identifier, made before the board was touched.</param>
 /// <param name="Station">Station name.</param>
 /// <param name="Serial">Serial number of the board.</param>

@@ -3,7 +3,8 @@ using ImpedanceScreen.Files;
 namespace ImpedanceScreen.Recording;
 
 /// <summary>
-/// A station's records. Calls may come from any thread; one writer works them off in order. When a task completes, what it wrote is
+/// A station's records. Calls may come from any thread; one writer works them off in order. When a task completes,
+/// what it wrote is
 /// durable.
 /// </summary>
 public interface IRecordStore : IAsyncDisposable
@@ -37,6 +38,12 @@ public interface IRecordStore : IAsyncDisposable
 
     /// <summary>Counts of a lot by the last disposition of each board, and aborted attempts.</summary>
     Task<LotCounts> CountLotAsync(string lot);
+
+    /// <summary>
+    /// Brings the files of the store to rest between lots, so that what is appended beside them does not grow for ever.
+    /// </summary>
+    /// <exception cref="StoreFaultException">The store cannot be written.</exception>
+    Task CheckpointAsync();
 }
 
 /// <summary>The head of a record chain.</summary>

@@ -13,7 +13,9 @@ using ImpedanceScreen.SimulatedBench.Logging;
 
 namespace ImpedanceScreen.Benchmarks.BoardTime;
 
-/// <summary>A lot worked by the real station on the real simulated bench, each in its own process, in real time.</summary>
+/// <summary>
+/// A lot worked by the real station on the real simulated bench, each in its own process, in real time.
+/// </summary>
 internal static class TimedLot
 {
     public static async Task<IReadOnlyList<BoardSpan>> RunAsync(

@@ -32,7 +32,8 @@ internal sealed class StationProgram : IDisposable
     /// <summary>Starts it.</summary>
     /// <param name="arguments">Command and options.</param>
     /// <param name="folder">Working folder; the repository by default.</param>
-    /// <param name="through">A program that runs it, with that program's arguments, as a tracer; none by default.</param>
+    /// <param name="through">A program that runs it, with that program's arguments, as a tracer; none by
+    /// default.</param>
     public static StationProgram Start(
         IEnumerable<string> arguments, string? folder = null, IReadOnlyList<string>? through = null)
     {

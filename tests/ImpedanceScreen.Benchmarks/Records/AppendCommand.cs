@@ -8,7 +8,8 @@ using ImpedanceScreen.Tests.Records.Shared;
 namespace ImpedanceScreen.Benchmarks.Records;
 
 /// <summary>
-/// Durable append of sealed records over raw inserts into the same tables, in turns within one run; the time to seal and
+/// Durable append of sealed records over raw inserts into the same tables, in turns within one run; the time to seal
+/// and
 /// the file's bytes a board beside it.
 /// </summary>
 internal sealed class AppendCommand : IFigureCommand

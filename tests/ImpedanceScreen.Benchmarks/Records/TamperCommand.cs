@@ -4,7 +4,9 @@ using ImpedanceScreen.Tests.Records.Shared;
 
 namespace ImpedanceScreen.Benchmarks.Records;
 
-/// <summary>Stores that somebody tampered with: the audit must find all, and name the first thing that is wrong.</summary>
+/// <summary>
+/// Stores that somebody tampered with: the audit must find all, and name the first thing that is wrong.
+/// </summary>
 internal sealed class TamperCommand : IFigureCommand
 {
     public string Name => "tamper";

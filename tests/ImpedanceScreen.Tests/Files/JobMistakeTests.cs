@@ -41,6 +41,19 @@ public sealed class JobMistakeTests
         },
     };
 
+    /// <summary>An edit of the small limit file after which the guard bands leave nothing that could pass.</summary>
+    public static TheoryData<string, string, int, int, string, string> AcceptanceCases => new()
+    {
+        {
+            "{min: 4.9, max: 5.1, rule: guarded", "{min: 4.99999, max: 5.00001, rule: guarded",
+            16, 11, Idle + ".limits.source_voltage_v", "guard bands of 1 x"
+        },
+        {
+            "{min: 40, max: 60, rule: simple}", "{min: 49.999, max: 50.001, rule: guarded, guard_factor: 2}",
+            29, 11, Low + ".limits.internal_resistance_ohm", "guard bands of 2 x"
+        },
+    };
+
     /// <summary>An edit of the small fixture file that makes it unfit for the small limit file.</summary>
     public static TheoryData<string, string, int, int, string, string> FixtureCases => new()
     {
@@ -69,6 +82,7 @@ public sealed class JobMistakeTests
 
     [Theory]
     [MemberData(nameof(LimitCases))]
+    [MemberData(nameof(AcceptanceCases))]
     public void A_limit_file_that_does_not_fit_the_fixture_is_reported_where_it_does_not(
         string find, string replace, int line, int column, string key, string words)
     {

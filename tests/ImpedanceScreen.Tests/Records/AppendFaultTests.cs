@@ -8,7 +8,9 @@ using Record = ImpedanceScreen.Recording.Record;
 
 namespace ImpedanceScreen.Tests.Records;
 
-/// <summary>Every step of an append fails: before it was done or after, once or twice, with or without a new start.</summary>
+/// <summary>
+/// Every step of an append fails: before it was done or after, once or twice, with or without a new start.
+/// </summary>
 public sealed class AppendFaultTests : IDisposable
 {
     private readonly string folder = Directory.CreateTempSubdirectory("faults").FullName;
@@ -108,7 +110,8 @@ public sealed class AppendFaultTests : IDisposable
         Assert.Empty(Audit.Run(StoreFile, head).Findings);
     }
 
-    // A station that starts again asks first what the store holds, as the bench does; a board's record comes once at most.
+    // A station that starts again asks first what the store holds, as the bench does; a board's record comes once at
+    // most.
     private async Task AppendAnewAsync(Record record, long expected, bool there)
     {
         await using RecordStore store = RecordStore.Open(StoreFile);

@@ -3,7 +3,9 @@ using Microsoft.Extensions.Time.Testing;
 
 namespace ImpedanceScreen.Tests.Screening;
 
-/// <summary>Runs work on one thread and lets a fake clock go on only when nothing is left to do: the same every time.</summary>
+/// <summary>
+/// Runs work on one thread and lets a fake clock go on only when nothing is left to do: the same every time.
+/// </summary>
 internal static class FakeTime
 {
     private const int StepsMax = 2_000_000;

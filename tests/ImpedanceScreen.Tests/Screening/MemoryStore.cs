@@ -57,5 +57,7 @@ internal sealed class MemoryStore(List<string> events) : IRecordStore
 
     public Task<LotCounts> CountLotAsync(string lot) => Task.FromResult(new LotCounts(0, 0, 0, 0, 0));
 
+    public Task CheckpointAsync() => Task.CompletedTask;
+
     public ValueTask DisposeAsync() => ValueTask.CompletedTask;
 }

@@ -47,6 +47,21 @@ public sealed class StationCommandTests : IDisposable
     }
 
     [Fact]
+    public async Task A_calibration_that_has_run_out_is_told_of()
+    {
+        string fixture = Path.Combine(folder, "old.yaml");
+        string text = await File.ReadAllTextAsync(Repository.File("fixtures", "simulated-bench.yaml"));
+        int at = text.IndexOf("due_on: 2099-12-31", StringComparison.Ordinal);
+        await File.WriteAllTextAsync(fixture, text.Remove(at, 18).Insert(at, "due_on: 2026-10-31"));
+
+        ProgramEnd end = await StationProgram.RunAsync(["validate", "--fixture", fixture]);
+        Assert.Equal(0, end.ExitCode);
+        Assert.Contains(
+            "the calibration of L22 (certificate HL-26-0417) was good until 2026-10-31", end.Errors,
+            StringComparison.Ordinal);
+    }
+
+    [Fact]
     public async Task A_missing_store_or_file_and_a_mistyped_option_begin_nothing()
     {
         ProgramEnd audit = await StationProgram.RunAsync(["audit", "--store", Path.Combine(folder, "none.db")]);

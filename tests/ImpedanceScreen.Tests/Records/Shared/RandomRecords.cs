@@ -7,7 +7,9 @@ using ImpedanceScreen.Recording;
 
 namespace ImpedanceScreen.Tests.Records.Shared;
 
-/// <summary>Random records as a station makes them: 8 outputs, 4 load points of 3 readings with 7 digits, a full budget.</summary>
+/// <summary>
+/// Random records as a station makes them: 8 outputs, 4 load points of 3 readings with 7 digits, a full budget.
+/// </summary>
 public sealed class RandomRecords(int seed)
 {
     public const int Outputs = 8;
