@@ -34,9 +34,10 @@ internal sealed class AllOpen(
         try
         {
             await OpenCoilsAsync(ofLink, alarms, limit.Token);
+            Deadline released = Deadline.In(time, ofLink.Max(unit => unit.Unit.Unit.Release) * timeScale);
             foreach (UnitRelays unit in ofLink)
             {
-                alarms[unit] = await ProveContactsAsync(unit, limit.Token);
+                alarms[unit] = await ProveContactsAsync(unit, released, limit.Token);
             }
         }
         catch (OperationCanceledException) when (limit.Expired)
@@ -93,7 +94,7 @@ internal sealed class AllOpen(
     private static string NotConfirmed(UnitRelays unit, string why) =>
         $"unit '{unit.Unit.Unit.Name}' is not confirmed open: {why}";
 
-    private async Task<string> ProveContactsAsync(UnitRelays unit, CancellationToken cancellation)
+    private async Task<string> ProveContactsAsync(UnitRelays unit, Deadline released, CancellationToken cancellation)
     {
         try
         {
@@ -101,7 +102,8 @@ internal sealed class AllOpen(
             bool closed = unit.HasContacts;
             for (int reads = 0; closed && reads < ContactReadsMost; reads++)
             {
-                await Deadline.In(time, unit.Unit.Unit.Release * timeScale).WaitAsync(cancellation);
+                await released.WaitAsync(cancellation);
+                released = Deadline.In(time, unit.Unit.Unit.Release * timeScale);
                 var contacts = await unit.ReadContactsAsync(cancellation);
                 stuck = string.Join(", ", contacts.Where(read => read.Contact).Select(read => names[read.Relay]));
                 closed = stuck.Length > 0;
