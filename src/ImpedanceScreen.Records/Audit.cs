@@ -16,11 +16,17 @@ namespace ImpedanceScreen.Records;
 /// </summary>
 public static class Audit
 {
+    // Result codes of SQLite that say nothing about what the file holds.
+    private const int Permission = 3;
+    private const int Busy = 5;
+    private const int CannotOpen = 14;
+
     /// <summary>Audits a store. Garbage gives findings, never an exception.</summary>
     /// <param name="path">The store's file.</param>
     /// <param name="known">A head noted elsewhere: proves that no tail was cut. Null where there is none.</param>
     /// <param name="cancellation">Ends the audit early.</param>
     /// <exception cref="FileNotFoundException">There is no such file; the message says what to do.</exception>
+    /// <exception cref="IOException">The file may not be opened, or another program holds it.</exception>
     /// <exception cref="OperationCanceledException">The caller cancelled.</exception>
     public static AuditReport Run(string path, ChainHead? known = null, CancellationToken cancellation = default)
     {
@@ -32,6 +38,10 @@ public static class Audit
             using StoreConnection connection = StoreConnection.OpenReadOnly(path);
             chain = new ChainAudit(findings, new RowAudit(connection, findings), known);
             Check(connection, chain, findings, cancellation);
+        }
+        catch (SqliteException exception) when (exception.SqliteErrorCode is CannotOpen or Permission or Busy)
+        {
+            throw new IOException($"{path} cannot be read: {exception.Message}", exception);
         }
         catch (Exception exception) when (exception is SqliteException or InvalidOperationException
             or InvalidCastException or IOException)

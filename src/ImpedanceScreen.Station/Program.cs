@@ -1,4 +1,5 @@
 using System.CommandLine;
+using ImpedanceScreen.Recording;
 using ImpedanceScreen.Station;
 using ImpedanceScreen.Station.Commands;
 
@@ -31,4 +32,14 @@ catch (NotBegunException e)
 {
     await Console.Error.WriteLineAsync(e.Message);
     return ExitCode.NotBegun;
+}
+catch (StoreFaultException e)
+{
+    await Console.Error.WriteLineAsync(e.Message);
+    return ExitCode.StoreFault;
+}
+catch (OperationCanceledException)
+{
+    // Told to stop before anything had begun.
+    return ExitCode.Stopped;
 }

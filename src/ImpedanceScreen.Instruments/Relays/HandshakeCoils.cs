@@ -14,8 +14,11 @@ internal sealed class HandshakeCoils(Handshake handshake, IReadOnlyDictionary<st
     /// after the
     /// bin was read back.
     /// </summary>
-    public async Task SetAsync(HandshakeState state, CancellationToken cancellation)
+    public async Task SetAsync(HandshakeState wanted, CancellationToken cancellation)
     {
+        HandshakeState state = wanted is { Bin: SortBin.Retest } && handshake.RetestBin is null
+            ? wanted with { Bin = SortBin.None }
+            : wanted;
         Dictionary<Relay, bool> now = await ReadCoilsAsync(cancellation);
         bool binStays = Bins().All(pair => now[pair.Relay] == (pair.Bin == state.Bin));
         await SetAsync(now, handshake.Done, now[handshake.Done] && state.Done && binStays, cancellation);

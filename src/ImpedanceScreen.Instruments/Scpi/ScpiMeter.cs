@@ -198,6 +198,13 @@ public sealed class ScpiMeter : IAsyncDisposable
 
     private async Task SetUpAsync(CancellationToken cancellation)
     {
+        // What went wrong before is told, then left behind: it says nothing about what follows.
+        foreach (ErrorEntry earlier in await ReadErrorsAsync(cancellation))
+        {
+            log.LogWarning(
+                "Meter {Meter} held an earlier error: {Number} {Text}", meter.Name, earlier.Number, earlier.Text);
+        }
+
         await session.SendAsync("*CLS", cancellation);
         await session.SendAsync("CONF:VOLT:DC", cancellation);
         await session.SendAsync($"SENS:VOLT:DC:NPLC {Number(meter.PowerLineCycles)}", cancellation);
@@ -216,6 +223,16 @@ public sealed class ScpiMeter : IAsyncDisposable
 
     private async Task CheckErrorsAsync(CancellationToken cancellation)
     {
+        List<ErrorEntry> errors = await ReadErrorsAsync(cancellation);
+        if (errors.Count > 0)
+        {
+            string list = string.Join("; ", errors.Select(e => $"{e.Number} {e.Text}"));
+            throw new ScpiException(ScpiFault.ErrorReported, $"The error queue holds: {list}.");
+        }
+    }
+
+    private async Task<List<ErrorEntry>> ReadErrorsAsync(CancellationToken cancellation)
+    {
         List<ErrorEntry> errors = [];
         while (errors.Count < ErrorReadsMost)
         {
@@ -228,11 +245,7 @@ public sealed class ScpiMeter : IAsyncDisposable
             errors.Add(entry);
         }
 
-        if (errors.Count > 0)
-        {
-            string list = string.Join("; ", errors.Select(e => $"{e.Number} {e.Text}"));
-            throw new ScpiException(ScpiFault.ErrorReported, $"The error queue holds: {list}.");
-        }
+        return errors;
     }
 
     private static string Number(double value) => value.ToString("R", CultureInfo.InvariantCulture);

@@ -29,6 +29,7 @@ public sealed class BoardAttempt
     private readonly LoadPointRunner runner;
     private readonly List<Task<StateResult>> results = [];
     private readonly int pointsPlanned;
+    private IReadOnlyList<Lane> underWay = [];
     private int pointsRead;
     private double? temperatureDegC;
 
@@ -61,7 +62,7 @@ public sealed class BoardAttempt
         }
 
         AllOpenOutcome allOpen = await bench.OpenAllAsync();
-        StateResult[] evaluated = InOrderOfTheLimitFile(await Task.WhenAll(results));
+        StateResult[] evaluated = InOrderOfTheLimitFile([.. await Task.WhenAll(results), .. Abandoned()]);
         return new AttemptEnd(Draft(evaluated, interruption, allOpen), allOpen, interruption);
     }
 
@@ -94,6 +95,7 @@ public sealed class BoardAttempt
     /// </summary>
     private async Task RunWaveAsync(IReadOnlyList<Lane> lanes, CancellationToken cancellation)
     {
+        underWay = lanes;
         Queue<Lane> outside = new(lanes);
         Queue<Lane> toPrepare = new();
         Queue<Lane> prepared = new();
@@ -191,6 +193,11 @@ public sealed class BoardAttempt
             TaskCreationOptions.DenyChildAttach,
             settings.Arithmetic));
     }
+
+    // What was read of states whose plan did not come to its end; none after an attempt that did.
+    private IEnumerable<StateResult> Abandoned() => underWay
+        .Where(lane => lane is { State: not null, Taken.Count: > 0 })
+        .Select(lane => StateEvaluation.Abandoned(lane.State!, lane.Taken, order.StartedAt));
 
     private Uncertain? Temperature =>
         temperatureDegC is { } measured && order.Job.Fixture.TemperatureSensor is { } sensor

@@ -10,5 +10,6 @@ namespace ImpedanceScreen.Screening.Lots;
 /// <param name="Serials">Where serial numbers come from.</param>
 /// <param name="BoardInNest">Serial number of a board that lies in the nest from before, where a person has read
 /// it.</param>
+/// <param name="ClosesLot">Whether the lot is closed when the serial numbers end: not for a single board.</param>
 public sealed record LotOrder(
-    ScreeningJob Job, string? Lot, string? Operator, ISerialSource Serials, string? BoardInNest);
+    ScreeningJob Job, string? Lot, string? Operator, ISerialSource Serials, string? BoardInNest, bool ClosesLot);

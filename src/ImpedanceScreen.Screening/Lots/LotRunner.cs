@@ -32,6 +32,8 @@ public sealed class LotRunner
     private readonly List<Guid> superseded = [];
     private BenchSettings settings;
     private int faultsInARow;
+    private int screened;
+    private bool sortedBoardInNest;
 
     /// <summary>Makes the loop; nothing is touched before <see cref="RunAsync"/>.</summary>
     public LotRunner(
@@ -109,7 +111,8 @@ public sealed class LotRunner
             await ScreenAsync(serial, cancellation);
         }
 
-        if (order.Lot is { } lot)
+        // Starting a finished lot once more screens nothing and closes nothing.
+        if (order is { Lot: { } lot, ClosesLot: true } && screened > 0)
         {
             LotCounts counts = await store.CountLotAsync(lot);
             await store.AppendAsync(new LotCloseRecord(
@@ -216,6 +219,14 @@ public sealed class LotRunner
     {
         for (int aborted = 0; aborted < AbortedInARowMax; aborted++)
         {
+            if (sortedBoardInNest)
+            {
+                status.Publish(Activity.AwaitingBoard, "waiting for the board before to be taken out", serial);
+                await handler.AwaitNoBoardAsync(cancellation);
+                await FinishAsync();
+                sortedBoardInNest = false;
+            }
+
             status.Publish(Activity.AwaitingBoard, "waiting for the board and a closed guard", serial);
             await handler.AwaitBoardAsync(cancellation);
             await handler.BeginAsync(cancellation);
@@ -277,10 +288,15 @@ public sealed class LotRunner
 
         // Shown while the handler moves: the nest does not wait for a terminal.
         status.Count(record);
-        if (order.Job.Fixture.Handshake is not null)
+        screened++;
+        if (order.Job.Fixture.Handshake is null)
         {
-            await handler.AwaitNoBoardAsync(cancellation);
+            // A person takes it out, in their own time; the next serial number must not be given to it.
+            sortedBoardInNest = true;
+            return;
         }
+
+        await handler.AwaitNoBoardAsync(cancellation);
 
         await FinishAsync();
         await handler.EndAsync(cancellation);

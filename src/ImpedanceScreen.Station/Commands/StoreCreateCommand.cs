@@ -31,7 +31,7 @@ internal static class StoreCreateCommand
             Console.WriteLine($"{path}: made for station {station}; its signing key is {path}.key");
             return ExitCode.Done;
         }
-        catch (Exception e) when (e is IOException or UnauthorizedAccessException)
+        catch (Exception e) when (e is IOException or UnauthorizedAccessException or ArgumentException)
         {
             throw new NotBegunException(e.Message, e);
         }

@@ -41,12 +41,19 @@ internal sealed class FixtureLock : IDisposable
     private static FileStream Lock(string address, string fixture)
     {
         string name = Convert.ToHexStringLower(SHA256.HashData(Encoding.UTF8.GetBytes(address)))[..16];
-        string path = Path.Combine(Path.GetTempPath(), $"impedance-screen-{name}.lock");
+        // A service may have a temporary folder of its own; the folder for locks is the same for all.
+        string folder = Directory.Exists("/run/lock") ? "/run/lock" : Path.GetTempPath();
+        string path = Path.Combine(folder, $"impedance-screen-{name}.lock");
         try
         {
             return new FileStream(path, FileMode.OpenOrCreate, FileAccess.ReadWrite, FileShare.None);
         }
-        catch (Exception e) when (e is IOException or UnauthorizedAccessException)
+        catch (UnauthorizedAccessException e)
+        {
+            throw new NotBegunException(
+                $"fixture {fixture}: the lock file {path} for {address} may not be opened: let this account write it", e);
+        }
+        catch (IOException e)
         {
             throw new NotBegunException(
                 $"fixture {fixture}: another process works on {address} (lock {path}): wait for it or end it", e);

@@ -32,6 +32,7 @@ internal static class ScreeningSession
     {
         ScreeningJob job = JobFiles.Load(request.LimitsPath, request.FixturePath);
         SerialChoice serials = choose(job);
+        SessionChecks.Refuse(request, job.Fixture, serials);
         await using Serilog.Core.Logger log = StationLog.Make(StationLog.PathFor(request.StorePath, request.LogFolder));
         foreach (string warning in CalibrationWarnings.Of(job.Fixture))
         {
@@ -65,7 +66,7 @@ internal static class ScreeningSession
         var status = new StatusBoard(TimeProvider.System);
         using IResultView view = ResultViews.Choose(request, job, status, single);
         status.Recorded += view.Add;
-        using IHost host = BuildHost(request, job, serials, bench, store, status, log);
+        using IHost host = BuildHost(request, job, serials, single, bench, store, status, log);
         LotWorker worker = host.Services.GetServices<IHostedService>().OfType<LotWorker>().Single();
         long begun = TimeProvider.System.GetTimestamp();
         await host.RunAsync(cancellation);
@@ -76,7 +77,7 @@ internal static class ScreeningSession
     }
 
     private static IHost BuildHost(
-        RunRequest request, ScreeningJob job, SerialChoice serials, IBench bench, IRecordStore store,
+        RunRequest request, ScreeningJob job, SerialChoice serials, bool single, IBench bench, IRecordStore store,
         StatusBoard status, Serilog.Core.Logger log)
     {
         HostApplicationBuilder builder = Host.CreateEmptyApplicationBuilder(new HostApplicationBuilderSettings());
@@ -86,7 +87,7 @@ internal static class ScreeningSession
         builder.Services.AddSingleton(bench);
         builder.Services.AddSingleton(store);
         builder.Services.AddSingleton(status);
-        builder.Services.AddSingleton(new LotOrder(job, request.Lot, request.Operator, serials.Source, serials.BoardInNest));
+        builder.Services.AddSingleton(new LotOrder(job, request.Lot, request.Operator, serials.Source, serials.BoardInNest, !single));
         builder.Services.AddSingleton(new RunSettings(
             ProgramVersion, request.TimeScale, TimeProvider.System, TaskScheduler.Default));
         builder.Services.AddSingleton<LotRunner>();

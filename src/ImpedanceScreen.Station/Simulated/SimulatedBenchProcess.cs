@@ -78,8 +78,17 @@ internal sealed class SimulatedBenchProcess : IAsyncDisposable
 
         using Process started = Process.Start(start)
             ?? throw new NotBegunException($"the simulated bench did not start: {start.FileName}");
-        await started.WaitForExitAsync(cancellation);
-        return started.ExitCode;
+        try
+        {
+            await started.WaitForExitAsync(cancellation);
+            return started.ExitCode;
+        }
+        catch (OperationCanceledException)
+        {
+            // A signal from a terminal reached it too; one that was sent to this process alone did not.
+            started.Kill();
+            throw;
+        }
     }
 
     /// <summary>The same fixture with the addresses that the simulated bench listens on.</summary>

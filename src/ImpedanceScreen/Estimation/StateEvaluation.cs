@@ -50,6 +50,21 @@ public static class StateEvaluation
             estimate?.Recorded(), fault, decisions, Overall(set, fault, decisions));
     }
 
+    /// <summary>Keeps the readings of a state whose plan was cut short by an abandoned attempt: nothing is estimated.</summary>
+    /// <param name="job">The output and state.</param>
+    /// <param name="readings">What was read until then.</param>
+    /// <param name="startedAt">When the attempt began, UTC.</param>
+    public static StateResult Abandoned(
+        StateJob job, IReadOnlyList<LoadPointReadings> readings, DateTimeOffset startedAt)
+    {
+        ArgumentNullException.ThrowIfNull(job);
+        ArgumentNullException.ThrowIfNull(readings);
+        return new(
+            job.Output.Name, job.State.Name, job.Range.FullScaleVolt,
+            [.. readings.Select(read => Keep(read, startedAt))],
+            null, null, Decide(job, null, null), Decision.Undecided);
+    }
+
     private static IReadOnlyList<LimitDecision> Decide(
         StateJob job, SourceEstimate? estimate, Uncertain? temperatureDegC)
     {

@@ -9,6 +9,7 @@ internal static class FixtureChecks
     {
         CheckGroups(reader, fixture);
         CheckReturns(reader, fixture);
+        CheckHandshake(reader, fixture);
         if (names.InputsReader is { } inputs
             && reader.Bound("links", "relay_units")
             && inputs.Bound("interlock", "poll_ms"))
@@ -38,6 +39,16 @@ internal static class FixtureChecks
         {
             reader.Mistake(
                 "watchdog_ms", "the unit would drop its coils between two polls", "make it longer than inputs.poll_ms");
+        }
+    }
+
+    private static void CheckHandshake(MappingReader reader, FixtureFile fixture)
+    {
+        if (reader.Bound("handshake", "inputs") && fixture is { Handshake: not null, Inputs.BoardPresent: null })
+        {
+            reader.Mistake(
+                "handshake", "without inputs.board_present nobody can tell when a sorted board has left",
+                "wire the input and declare it");
         }
     }
 

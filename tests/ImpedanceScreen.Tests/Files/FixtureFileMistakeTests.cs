@@ -35,6 +35,10 @@ public sealed class FixtureFileMistakeTests
             96, 24, "inputs.interlock.input", "by inputs.board_present"
         },
         {
+            "  board_present: {unit: b, input: 0}\n", "",
+            97, 1, "handshake", "nobody can tell when a sorted board has left"
+        },
+        {
             "fail_bin: {unit: b, coil: 4}", "fail_bin: {unit: b, coil: 3}",
             100, 23, "handshake.fail_bin.coil", "by handshake.pass_bin"
         },

@@ -16,7 +16,7 @@ public sealed class FixtureBenchTests : IAsyncLifetime
     private readonly MeterPeer meter = new();
     private readonly MemoryChannels channels = new();
     private readonly List<(TimeSpan At, byte Unit, WriteCoils Write)> writes = [];
-    private readonly FixtureBench bench;
+    private FixtureBench bench;
     private readonly long startedAt;
 
     public FixtureBenchTests()
@@ -293,6 +293,19 @@ public sealed class FixtureBenchTests : IAsyncLifetime
     }
 
     [Fact]
+    public async Task Without_a_coil_for_it_the_retest_bin_is_no_bin_coil_at_all()
+    {
+        Handshake two = TestBench.Fixture.Handshake! with { RetestBin = null };
+        await bench.DisposeAsync();
+        bench = Bench(TestBench.Fixture with { Handshake = two });
+        await StartAsync();
+        await time.PumpAsync(bench.SetHandshakeAsync(new HandshakeState(SortBin.Retest, true, true), CancellationToken.None));
+        Assert.Equal(
+            new HandshakeState(SortBin.None, Busy: true, Done: true),
+            await time.PumpAsync(bench.ReadHandshakeAsync(CancellationToken.None)));
+    }
+
+    [Fact]
     public async Task Two_bin_coils_at_once_are_a_fault()
     {
         await StartAsync();
@@ -314,9 +327,12 @@ public sealed class FixtureBenchTests : IAsyncLifetime
         meter.Identity = "EXAMPLE,VOLTMETER,9999,1.0";
         Assert.Equal(BenchFault.MeterChanged, (await Assert.ThrowsAsync<BenchFaultException>(ReadAsync)).Fault);
         meter.Identity = MeterPeer.DefaultIdentity;
-        meter.Errors.Enqueue("-113,\"Undefined header\"");
-        Assert.Equal(BenchFault.MeterError, (await Assert.ThrowsAsync<BenchFaultException>(ReadAsync)).Fault);
         Assert.Equal(3.0, (await ReadAsync()).Volt);
+        meter.Errors.Enqueue("-113,\"Undefined header\"");
+        MeterRange other = TestBench.TenVolt with { FullScaleVolt = 0.1 };
+        BenchFaultException refused = await Assert.ThrowsAsync<BenchFaultException>(
+            () => time.PumpAsync(bench.SetRangeAsync(TestBench.Meter, other, CancellationToken.None)));
+        Assert.Equal(BenchFault.MeterError, refused.Fault);
     }
 
     [Fact]

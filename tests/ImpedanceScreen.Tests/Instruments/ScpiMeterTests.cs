@@ -32,7 +32,7 @@ public sealed class ScpiMeterTests
         Assert.Equal(ReadingCondition.Valid, reading.Condition);
         string[] sent =
         [
-            "*IDN?", "*CLS", "CONF:VOLT:DC", "SENS:VOLT:DC:NPLC 0.1", "SYST:ERR?",
+            "*IDN?", "SYST:ERR?", "*CLS", "CONF:VOLT:DC", "SENS:VOLT:DC:NPLC 0.1", "SYST:ERR?",
             "SENS:VOLT:DC:RANG 10", "SYST:ERR?", "READ?",
         ];
         Assert.Equal(sent, peer.Messages);
@@ -163,6 +163,17 @@ public sealed class ScpiMeterTests
 
         await time.PumpAsync(meter.SetRangeAsync(other, CancellationToken.None));
         Assert.Equal(1.0, (await ReadAsync(meter)).Volt);
+    }
+
+    [Fact]
+    public async Task Errors_from_before_the_set_up_are_read_and_hinder_nothing()
+    {
+        await using ScpiMeter meter = MeterOn(serial: false, out _);
+        peer.Errors.Enqueue("-410,\"Query INTERRUPTED\"");
+        await time.PumpAsync(meter.StartAsync(CancellationToken.None));
+
+        Assert.Equal(["*IDN?", "SYST:ERR?", "SYST:ERR?", "*CLS"], peer.Messages[..4]);
+        Assert.Empty(peer.Errors);
     }
 
     [Fact]

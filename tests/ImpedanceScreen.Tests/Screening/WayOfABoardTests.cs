@@ -1,4 +1,5 @@
 using ImpedanceScreen.Bench;
+using ImpedanceScreen.Decisions;
 using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Recording;
 using ImpedanceScreen.Screening.Lots;
@@ -12,9 +13,9 @@ namespace ImpedanceScreen.Tests.Screening;
 public sealed class WayOfABoardTests
 {
     private readonly FakeTimeProvider time = new(new DateTimeOffset(2026, 11, 30, 8, 0, 0, TimeSpan.Zero));
-    private readonly ScreeningJob job = SmallJob.Make();
-    private readonly ScriptedBench bench;
-    private readonly MemoryStore store;
+    private ScreeningJob job = SmallJob.Make();
+    private ScriptedBench bench;
+    private MemoryStore store;
 
     public WayOfABoardTests()
     {
@@ -276,9 +277,86 @@ public sealed class WayOfABoardTests
         Assert.Empty(bench.Closed);
     }
 
+    [Fact]
+    public void Without_a_handler_the_next_serial_number_waits_until_the_board_before_was_taken_out()
+    {
+        ByHand();
+        int pollsWithBoard = 0;
+        bench.Inputs = inputs =>
+        {
+            // A person takes the board out after a while, and puts the next one in after another.
+            pollsWithBoard += store.Records.Count == 1 ? 1 : 0;
+            return inputs with { BoardPresent = pollsWithBoard is 0 or <= 50 or > 60 };
+        };
+        LotEnd end = Run(["S-001", "S-002"]);
+
+        Assert.Equal(LotEndKind.Complete, end.Kind);
+        Assert.Equal(["S-001", "S-002"], Boards.Select(board => board.Serial));
+        int second = bench.Events.IndexOf("begin S-002");
+        int first = bench.Events.IndexOf("record S-001 Pass");
+        Assert.True(bench.Events[first..second].Count(each => each == "poll") > 60, "not before it was out and back");
+    }
+
+    [Fact]
+    public void Without_a_handler_a_board_that_stays_is_never_screened_as_the_next()
+    {
+        ByHand();
+        using var stop = new CancellationTokenSource();
+        int polls = 0;
+        bench.Inputs = inputs =>
+        {
+            if (store.Records.Count == 1 && ++polls == 1000)
+            {
+                stop.Cancel();
+            }
+
+            return inputs;
+        };
+        LotEnd end = Run(["S-001", "S-002"], stop: stop.Token);
+
+        Assert.Equal(LotEndKind.Stopped, end.Kind);
+        Assert.Equal("S-001", Assert.Single(Boards).Serial);
+        Assert.Single(store.Unfinished);
+    }
+
+    [Fact]
+    public void What_was_read_of_a_state_that_was_cut_short_stays_in_the_record()
+    {
+        int reads = 0;
+        bench.Before = each =>
+        {
+            if (each == "read" && ++reads == 9)
+            {
+                throw new BenchFaultException(BenchFault.MeterLost, "meter gives no answer");
+            }
+        };
+        Run(["S-001"]);
+
+        StateResult cut = Assert.Single(Boards.First().States);
+        Assert.Equal((null, Decision.Undecided), (cut.Estimate, cut.Decision));
+        Assert.Equal([null, "L10k"], cut.Points.Select(point => point.Load));
+        Assert.All(cut.Points, point => Assert.Equal(4, point.Readings.Count));
+    }
+
+    [Fact]
+    public void A_finished_lot_that_is_started_once_more_is_not_closed_again()
+    {
+        Run(["S-001"]);
+        Run(["S-001"]);
+
+        Assert.Single(store.Records.OfType<LotCloseRecord>());
+    }
+
+    private void ByHand()
+    {
+        job = job with { Fixture = job.Fixture with { Handshake = null } };
+        bench = new ScriptedBench(job, time);
+        store = new MemoryStore(bench.Events);
+    }
+
     private LotEnd Run(string[] serials, string? inNest = null, CancellationToken stop = default)
     {
-        var order = new LotOrder(job, "lot", "jo", new ListedSerials(serials), inNest);
+        var order = new LotOrder(job, "lot", "jo", new ListedSerials(serials), inNest, ClosesLot: true);
         var settings = new RunSettings("1.0", 1.0, time, new InlineScheduler());
         var runner = new LotRunner(
             bench, store, new StatusBoard(time), order, settings, NullLogger<LotRunner>.Instance);

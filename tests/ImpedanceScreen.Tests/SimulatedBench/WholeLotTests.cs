@@ -60,7 +60,7 @@ public sealed class WholeLotTests : IDisposable
             job.Fixture, simulated.Channels, TimeProvider.System, TimeScale, NullLogger.Instance);
         var status = new StatusBoard(TimeProvider.System);
         status.Recorded += seen.Add;
-        var order = new LotOrder(job, Lot, "jo", new ListedSerials(SerialRange.From(FirstSerial, Boards)), null);
+        var order = new LotOrder(job, Lot, "jo", new ListedSerials(SerialRange.From(FirstSerial, Boards)), null, ClosesLot: true);
         var settings = new RunSettings("1.0", TimeScale, TimeProvider.System, TaskScheduler.Default);
         var runner = new LotRunner(bench, store, status, order, settings, NullLogger<LotRunner>.Instance);
         return await runner.RunAsync(default);

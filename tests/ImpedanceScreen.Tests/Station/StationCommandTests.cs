@@ -78,6 +78,18 @@ public sealed class StationCommandTests : IDisposable
     }
 
     [Fact]
+    public async Task Settling_is_not_shortened_on_a_real_bench()
+    {
+        ProgramEnd end = await StationProgram.RunAsync(
+            [
+                "board", "T6-000001", "--fixture", "fixtures/two-serial-ports.yaml", "--limits", "limits/tern-6.yaml",
+                "--store", Path.Combine(folder, "none.db"), "--time-scale", "0.5",
+            ]);
+        Assert.Equal(2, end.ExitCode);
+        Assert.Contains("shortens settling", end.Errors, StringComparison.Ordinal);
+    }
+
+    [Fact]
     public async Task A_store_is_made_once()
     {
         string store = Path.Combine(folder, "records.db");
