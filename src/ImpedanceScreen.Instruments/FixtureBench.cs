@@ -104,12 +104,14 @@ public sealed class FixtureBench : IBench
     }
 
     /// <inheritdoc/>
-    public Task<Switched> SwitchAsync(SwitchOrder order, CancellationToken cancellation) =>
-        relays.SwitchAsync(order, cancellation);
+    public Task<Switched> SwitchAsync(
+        SwitchOrder order, Func<CancellationToken, Task> between, CancellationToken cancellation) =>
+        relays.SwitchAsync(order, between, cancellation);
 
     /// <inheritdoc/>
-    public Task<ContactCheck> CheckContactsAsync(CancellationToken cancellation) =>
-        relays.CheckContactsAsync(cancellation);
+    public Task<ContactCheck> CheckContactsAsync(
+        Func<CancellationToken, Task> between, CancellationToken cancellation) =>
+        relays.CheckContactsAsync(between, cancellation);
 
     /// <inheritdoc/>
     public Task SetRangeAsync(Meter meter, MeterRange range, CancellationToken cancellation) => AskAsync(

@@ -104,7 +104,7 @@ internal sealed class AllOpen(
             {
                 await released.WaitAsync(cancellation);
                 released = Deadline.In(time, unit.Unit.Unit.Release * timeScale);
-                var contacts = await unit.ReadContactsAsync(cancellation);
+                var contacts = await unit.ReadContactsAsync(FixtureUnit.NothingBetween, cancellation);
                 stuck = string.Join(", ", contacts.Where(read => read.Contact).Select(read => names[read.Relay]));
                 closed = stuck.Length > 0;
             }

@@ -9,8 +9,8 @@ namespace ImpedanceScreen.Instruments.Relays;
 /// </summary>
 internal sealed class FixtureUnit(RelayUnit unit, Link link, IModbusClient client, TimeProvider time)
 {
-    // Reading over a few addresses that nobody declared saves an exchange; a unit's banks lie farther apart.
-    private const int ReadGapMost = 16;
+    /// <summary>Where nothing is to be done between two exchanges: what opens all relays waits for nothing.</summary>
+    public static Func<CancellationToken, Task> NothingBetween { get; } = static _ => Task.CompletedTask;
 
     private long answeredAt = time.GetTimestamp();
 
@@ -28,13 +28,13 @@ internal sealed class FixtureUnit(RelayUnit unit, Link link, IModbusClient clien
 
     /// <summary>The values of these coils in the order of their addresses.</summary>
     public Task<IReadOnlyDictionary<ushort, bool>> ReadCoilsAsync(
-        IEnumerable<ushort> coils, CancellationToken cancellation) =>
-        ReadAsync(coils, client.ReadCoilsAsync, cancellation);
+        IEnumerable<ushort> coils, Func<CancellationToken, Task> between, CancellationToken cancellation) =>
+        ReadAsync(coils, client.ReadCoilsAsync, between, cancellation);
 
     /// <summary>The values of these discrete inputs.</summary>
     public Task<IReadOnlyDictionary<ushort, bool>> ReadInputsAsync(
-        IEnumerable<ushort> inputs, CancellationToken cancellation) =>
-        ReadAsync(inputs, client.ReadDiscreteInputsAsync, cancellation);
+        IEnumerable<ushort> inputs, Func<CancellationToken, Task> between, CancellationToken cancellation) =>
+        ReadAsync(inputs, client.ReadDiscreteInputsAsync, between, cancellation);
 
     public async Task<ushort> ReadInputRegisterAsync(ushort register, CancellationToken cancellation) =>
         (await AskAsync(client.ReadInputRegistersAsync(unit.UnitAddress, register, 1, cancellation)))[0];
@@ -54,11 +54,13 @@ internal sealed class FixtureUnit(RelayUnit unit, Link link, IModbusClient clien
     private async Task<IReadOnlyDictionary<ushort, bool>> ReadAsync(
         IEnumerable<ushort> addresses,
         Func<byte, ushort, int, CancellationToken, Task<bool[]>> read,
+        Func<CancellationToken, Task> between,
         CancellationToken cancellation)
     {
         var values = new Dictionary<ushort, bool>();
-        foreach (AddressSpan span in AddressSpan.Cover(addresses, ReadGapMost, ModbusLimits.ReadBits))
+        foreach (AddressSpan span in AddressSpan.Cover(addresses, AddressSpan.ReadGapMost, ModbusLimits.ReadBits))
         {
+            await between(cancellation);
             bool[] bits = await AskAsync(read(unit.UnitAddress, span.First, span.Count, cancellation));
             for (int i = 0; i < bits.Length; i++)
             {

@@ -83,7 +83,8 @@ internal sealed class HandshakeCoils(Handshake handshake, IReadOnlyDictionary<st
         foreach (IGrouping<string, Relay> ofUnit in Relays().GroupBy(relay => relay.Unit))
         {
             IReadOnlyDictionary<ushort, bool> values =
-                await units[ofUnit.Key].ReadCoilsAsync(ofUnit.Select(relay => relay.Coil), cancellation);
+                await units[ofUnit.Key].ReadCoilsAsync(
+                    ofUnit.Select(relay => relay.Coil), FixtureUnit.NothingBetween, cancellation);
             foreach (Relay relay in ofUnit)
             {
                 coils[relay] = values[relay.Coil];

@@ -21,10 +21,12 @@ internal sealed class InputReader(BenchInputs inputs, IReadOnlyDictionary<string
         }
 
         IReadOnlyDictionary<ushort, bool> both =
-            await interlockUnit.ReadInputsAsync([present.Address, inputs.Interlock.Address], cancellation);
+            await interlockUnit.ReadInputsAsync(
+                [present.Address, inputs.Interlock.Address], FixtureUnit.NothingBetween, cancellation);
         return new(both[present.Address], both[inputs.Interlock.Address]);
     }
 
     private async Task<bool> ReadAsync(InputPoint input, CancellationToken cancellation) =>
-        (await units[input.Unit].ReadInputsAsync([input.Address], cancellation))[input.Address];
+        (await units[input.Unit].ReadInputsAsync(
+            [input.Address], FixtureUnit.NothingBetween, cancellation))[input.Address];
 }

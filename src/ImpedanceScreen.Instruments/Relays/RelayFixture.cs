@@ -36,7 +36,8 @@ internal sealed class RelayFixture
     /// <summary>Whether what the relays do is not known. True until all were proved open once.</summary>
     public bool IsDoubtful { get; private set; } = true;
 
-    public async Task<Switched> SwitchAsync(SwitchOrder order, CancellationToken cancellation)
+    public async Task<Switched> SwitchAsync(
+        SwitchOrder order, Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         cancellation.ThrowIfCancellationRequested();
         HashSet<Relay> closed = [.. Closed()];
@@ -51,34 +52,35 @@ internal sealed class RelayFixture
         TimeSpan contactTime = TimeSpan.Zero;
         if (opening.Length > 0)
         {
-            acknowledged = await CommandAsync(opening, close: false, cancellation);
+            acknowledged = await CommandAsync(opening, close: false, between, cancellation);
             contactTime = Longest(opening, unit => unit.Release);
             contactsOpen = Deadline.After(time, acknowledged, contactTime);
         }
 
         if (closing.Length > 0)
         {
-            await ConfirmAsync(opening, cancellation);
+            await ConfirmAsync(opening, between, cancellation);
 
             // Also what an earlier order opened may still be on its way.
             await contactsOpen.WaitAsync(cancellation);
-            acknowledged = await CommandAsync(closing, close: true, cancellation);
+            acknowledged = await CommandAsync(closing, close: true, between, cancellation);
             contactTime = Longest(closing, unit => unit.Operate);
         }
 
-        await ConfirmAsync(closing.Length > 0 ? closing : order.Open.Concat(order.Close), cancellation);
+        await ConfirmAsync(closing.Length > 0 ? closing : order.Open.Concat(order.Close), between, cancellation);
         IsDoubtful = false;
         return new Switched(acknowledged, contactTime);
     }
 
-    public async Task<ContactCheck> CheckContactsAsync(CancellationToken cancellation)
+    public async Task<ContactCheck> CheckContactsAsync(
+        Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         List<Relay> proved = [];
         List<Relay> notClosed = [];
         List<Relay> notOpen = [];
         foreach (UnitRelays unit in units.Values)
         {
-            foreach ((Relay relay, bool commanded, bool contact) in await unit.ReadContactsAsync(cancellation))
+            foreach ((Relay relay, bool commanded, bool contact) in await unit.ReadContactsAsync(between, cancellation))
             {
                 List<Relay>? list = (commanded, contact) switch
                 {
@@ -115,7 +117,7 @@ internal sealed class RelayFixture
         {
             if (!IsDoubtful && unit.Unit.NeedsWord)
             {
-                await unit.ConfirmAsync(cancellation);
+                await unit.ConfirmAsync(FixtureUnit.NothingBetween, cancellation);
             }
         }
     }
@@ -140,7 +142,8 @@ internal sealed class RelayFixture
 
     private IEnumerable<Relay> Closed() => units.Values.SelectMany(unit => unit.Closed);
 
-    private async Task<long> CommandAsync(Relay[] relays, bool close, CancellationToken cancellation)
+    private async Task<long> CommandAsync(
+        Relay[] relays, bool close, Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         // The order was judged as a whole; here once more with what is commanded by now, just before contacts close.
         if (close && rules.Broken(Closed().Concat(relays).ToHashSet()) is { } why)
@@ -150,17 +153,18 @@ internal sealed class RelayFixture
 
         foreach (IGrouping<string, Relay> ofUnit in relays.GroupBy(relay => relay.Unit))
         {
-            await units[ofUnit.Key].CommandAsync(ofUnit, close, cancellation);
+            await units[ofUnit.Key].CommandAsync(ofUnit, close, between, cancellation);
         }
 
         return time.GetTimestamp();
     }
 
-    private async Task ConfirmAsync(IEnumerable<Relay> relays, CancellationToken cancellation)
+    private async Task ConfirmAsync(
+        IEnumerable<Relay> relays, Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         foreach (string unit in relays.Select(relay => relay.Unit).Distinct())
         {
-            await units[unit].ConfirmAsync(cancellation);
+            await units[unit].ConfirmAsync(between, cancellation);
         }
     }
 

@@ -23,7 +23,8 @@ internal sealed class UnitRelays(FixtureUnit unit, IReadOnlyDictionary<Relay, st
     public bool HasContacts => relays.Any(relay => relay.ContactInput is not null);
 
     /// <summary>Commands relays of this unit in as few exchanges as their neighbourhood allows.</summary>
-    public async Task CommandAsync(IEnumerable<Relay> changed, bool close, CancellationToken cancellation)
+    public async Task CommandAsync(
+        IEnumerable<Relay> changed, bool close, Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         ushort[] coils = [.. changed.Select(relay => relay.Coil)];
         foreach (ushort coil in coils)
@@ -37,6 +38,7 @@ internal sealed class UnitRelays(FixtureUnit unit, IReadOnlyDictionary<Relay, st
             if (inSpan.Length > 0)
             {
                 ushort first = inSpan.Min();
+                await between(cancellation);
                 await WriteAsync(new(first, inSpan.Max() - first + 1), cancellation);
             }
         }
@@ -51,15 +53,15 @@ internal sealed class UnitRelays(FixtureUnit unit, IReadOnlyDictionary<Relay, st
             await WriteAsync(span, cancellation);
         }
 
-        await ConfirmAsync(cancellation);
+        await ConfirmAsync(FixtureUnit.NothingBetween, cancellation);
     }
 
     /// <summary>Reads all coils of the group back.</summary>
     /// <exception cref="BenchFaultException">A coil is not as commanded.</exception>
-    public async Task ConfirmAsync(CancellationToken cancellation)
+    public async Task ConfirmAsync(Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         IReadOnlyDictionary<ushort, bool> coils =
-            await unit.ReadCoilsAsync(relays.Select(relay => relay.Coil), cancellation);
+            await unit.ReadCoilsAsync(relays.Select(relay => relay.Coil), between, cancellation);
         string[] wrong =
         [
             .. relays.Where(relay => coils[relay.Coil] != commandedClosed.Contains(relay.Coil))
@@ -76,11 +78,11 @@ internal sealed class UnitRelays(FixtureUnit unit, IReadOnlyDictionary<Relay, st
 
     /// <summary>Whether each relay's mirror contact reads closed, where one is wired.</summary>
     public async Task<IReadOnlyList<(Relay Relay, bool Commanded, bool Contact)>> ReadContactsAsync(
-        CancellationToken cancellation)
+        Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         Relay[] wired = [.. relays.Where(relay => relay.ContactInput is not null)];
         IReadOnlyDictionary<ushort, bool> inputs =
-            await unit.ReadInputsAsync(wired.Select(relay => relay.ContactInput!.Value), cancellation);
+            await unit.ReadInputsAsync(wired.Select(relay => relay.ContactInput!.Value), between, cancellation);
         return
         [
             .. wired.Select(relay =>

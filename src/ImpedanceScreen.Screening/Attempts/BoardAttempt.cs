@@ -73,7 +73,7 @@ public sealed class BoardAttempt
         if (order.Job.Fixture.BoardSupply is { } supply)
         {
             Switched on = await ledger.SwitchingAsync(
-                bench.SwitchAsync(new SwitchOrder([], [supply.Relay]), cancellation));
+                bench.SwitchAsync(new SwitchOrder([], [supply.Relay]), watch.PollIfDueAsync, cancellation));
             runner.WarmedUp = Deadline.After(
                 settings.Time, on.AcknowledgedTimestamp, on.ContactTime + (supply.WarmUp * settings.TimeScale));
         }
@@ -213,7 +213,7 @@ public sealed class BoardAttempt
 
     private async Task DischargeAsync(BoardSupply supply, CancellationToken cancellation)
     {
-        await ledger.SwitchingAsync(bench.SwitchAsync(new SwitchOrder([supply.Relay], []), cancellation));
+        await ledger.SwitchingAsync(bench.SwitchAsync(new SwitchOrder([supply.Relay], []), watch.PollIfDueAsync, cancellation));
         Deadline limit = Deadline.In(settings.Time, DischargeLimit);
         foreach (StateJob state in order.Job.States.DistinctBy(state => state.Output.Name))
         {

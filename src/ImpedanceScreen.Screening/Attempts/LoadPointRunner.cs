@@ -66,7 +66,7 @@ internal sealed class LoadPointRunner(
 
         if (open.Count > 0)
         {
-            await ledger.SwitchingAsync(bench.SwitchAsync(new SwitchOrder(open, []), cancellation));
+            await ledger.SwitchingAsync(bench.SwitchAsync(new SwitchOrder(open, []), watch.PollIfDueAsync, cancellation));
         }
 
         lane.Path = [];
@@ -104,7 +104,7 @@ internal sealed class LoadPointRunner(
         Deadline senseAtRest = await SenseAsync(state.Meter, sense, cancellation);
         Deadline atRest = Later(lane.AtRest, senseAtRest);
         await ledger.SettlingAsync(watch.UntilAsync(atRest, cancellation), atRest.Remaining);
-        ContactCheck contacts = await ledger.SwitchingAsync(bench.CheckContactsAsync(cancellation));
+        ContactCheck contacts = await ledger.SwitchingAsync(bench.CheckContactsAsync(watch.PollIfDueAsync, cancellation));
         Deadline settled = Later(lane.Settled, WarmedUp);
         await ledger.SettlingAsync(watch.UntilAsync(settled, cancellation), TimeSpan.Zero);
         return Proof(contacts, point.Load);
@@ -130,7 +130,7 @@ internal sealed class LoadPointRunner(
         }
 
         Switched switched = await ledger.SwitchingAsync(
-            bench.SwitchAsync(new SwitchOrder(before is null ? [] : [before], [sense]), cancellation));
+            bench.SwitchAsync(new SwitchOrder(before is null ? [] : [before], [sense]), watch.PollIfDueAsync, cancellation));
         sensed[meter.Name] = sense;
         return Deadline.After(time, switched.AcknowledgedTimestamp, switched.ContactTime);
     }
@@ -139,7 +139,7 @@ internal sealed class LoadPointRunner(
         Lane lane, IReadOnlyList<Relay> open, IReadOnlyList<Relay> close, CancellationToken cancellation)
     {
         Switched switched = await ledger.SwitchingAsync(
-            bench.SwitchAsync(new SwitchOrder(open, close), cancellation));
+            bench.SwitchAsync(new SwitchOrder(open, close), watch.PollIfDueAsync, cancellation));
         lane.AtRest = Deadline.After(time, switched.AcknowledgedTimestamp, switched.ContactTime);
         TimeSpan settle = switched.ContactTime + (lane.State!.State.Settle * timeScale);
         lane.Settled = Deadline.After(time, switched.AcknowledgedTimestamp, settle);

@@ -19,17 +19,25 @@ public interface IBench : IAsyncDisposable
     Task<InputState> PollInputsAsync(CancellationToken cancellation);
 
     /// <summary>
-    /// Switches relays: opens first, waits their release time, closes then, and reads the coils back. Returns when
-    /// the last coil is
-    /// acknowledged and confirmed; the contact is at rest only after <see cref="Switched.ContactTime"/> more.
+    /// Switches relays: opens first, waits their release time, closes then, and reads the coils back. Returns when the
+    /// last coil is acknowledged and confirmed; the contact is at rest only after <see cref="Switched.ContactTime"/> more.
     /// </summary>
-    Task<Switched> SwitchAsync(SwitchOrder order, CancellationToken cancellation);
+    /// <param name="order">What is to open and close.</param>
+    /// <param name="between">
+    /// Called before each exchange, so that a slow switching does not keep the inputs from being read. What it throws
+    /// ends the switching, and then only opening all relays is accepted.
+    /// </param>
+    /// <param name="cancellation">Ends it early, with the same effect.</param>
+    Task<Switched> SwitchAsync(
+        SwitchOrder order, Func<CancellationToken, Task> between, CancellationToken cancellation);
 
     /// <summary>
     /// Reads the mirror contacts that are wired and compares them with what is commanded; call it when the contacts
     /// are at rest.
     /// </summary>
-    Task<ContactCheck> CheckContactsAsync(CancellationToken cancellation);
+    /// <param name="between">Called before each exchange.</param>
+    /// <param name="cancellation">Ends it early.</param>
+    Task<ContactCheck> CheckContactsAsync(Func<CancellationToken, Task> between, CancellationToken cancellation);
 
     /// <summary>Sets the meter to one DC-volts range; does nothing where it is set so already.</summary>
     Task SetRangeAsync(Meter meter, MeterRange range, CancellationToken cancellation);

@@ -9,10 +9,13 @@ namespace ImpedanceScreen.Fixtures;
 /// <param name="longestAnswer">Longest time the unit may take to answer.</param>
 internal sealed class ExchangeTime(Link link, TimeSpan longestAnswer)
 {
+    /// <summary>Most coils in one write.</summary>
+    internal const int CoilsMost = 1968;
+
     private const int AddressAndCrc = 3;
 
     /// <summary>Function 15 on so many coils: one exchange for each 1968.</summary>
-    internal TimeSpan WriteCoils(int count) => Split(count, 1968, bits => Exchange(6 + Bytes(bits), 5));
+    internal TimeSpan WriteCoils(int count) => Split(count, CoilsMost, bits => Exchange(6 + Bytes(bits), 5));
 
     /// <summary>Function 01 or 02 on so many coils or inputs: one exchange for each 2000.</summary>
     internal TimeSpan ReadBits(int count) => Split(count, 2000, bits => Exchange(5, 2 + Bytes(bits)));

@@ -10,7 +10,9 @@ namespace ImpedanceScreen.Fixtures;
 /// <param name="Poll">The contact may open right after it was read: one whole poll period passes.</param>
 /// <param name="Waiting">The longest exchange of any relay unit may just have begun when the next poll is due.</param>
 /// <param name="Reading">The poll's own exchange, one for each unit that has an input.</param>
-/// <param name="AllOpen">One write of all coils and one read-back for each relay unit, one after another.</param>
+/// <param name="AllOpen">
+/// Writes of all coils, one for each run without a gap, and their read-backs, unit after unit.
+/// </param>
 public sealed record InterlockReaction(TimeSpan Poll, TimeSpan Waiting, TimeSpan Reading, TimeSpan AllOpen)
 {
     /// <summary>The longest time that a fixture file may have.</summary>
@@ -62,25 +64,27 @@ public sealed record InterlockReaction(TimeSpan Poll, TimeSpan Waiting, TimeSpan
             }
 
             ExchangeTime time = new(link, unit.LongestAnswer);
-            (int coilSpan, int inputSpan) = (Span(coilsOf[unit.Name]), Span(contactsOf[unit.Name]));
-            (TimeSpan write, TimeSpan readBack, TimeSpan read) =
-                (time.WriteCoils(coilSpan), time.ReadBits(coilSpan), time.ReadBits(inputSpan));
-            waiting = Max(waiting, Max(write, Max(readBack, read)));
-            allOpen += write + readBack;
+            TimeSpan[] writes = [.. Spans(coilsOf[unit.Name], gapMost: 0).Select(span => time.WriteCoils(span.Count))];
+            TimeSpan[] readBacks = Reads(coilsOf[unit.Name], time);
+            TimeSpan[] reads = Reads(contactsOf[unit.Name], time);
+            waiting = writes.Concat(readBacks).Concat(reads).Append(waiting).Max();
+            allOpen += Sum(writes) + Sum(readBacks);
             bool polled = unit.Name == inputs.Interlock.Unit || unit.Name == inputs.BoardPresent?.Unit;
-            reading += polled ? read : TimeSpan.Zero;
+            reading += polled ? Sum(reads) : TimeSpan.Zero;
         }
 
         return new(inputs.Poll, waiting, reading, allOpen);
     }
 
-    private static int Span(IEnumerable<int> addresses)
-    {
-        List<int> all = [.. addresses];
-        return all.Count == 0 ? 1 : all.Max() - all.Min() + 1;
-    }
+    private static TimeSpan[] Reads(IEnumerable<int> addresses, ExchangeTime time) =>
+        [.. Spans(addresses, AddressSpan.ReadGapMost).Select(span => time.ReadBits(span.Count))];
 
-    private static TimeSpan Max(TimeSpan one, TimeSpan other) => one > other ? one : other;
+    // As the bench sends them: see where it opens all relays and where it reads inputs.
+    private static IReadOnlyList<AddressSpan> Spans(IEnumerable<int> addresses, int gapMost) =>
+        AddressSpan.Cover(addresses.Select(address => (ushort)address), gapMost, ExchangeTime.CoilsMost);
+
+    private static TimeSpan Sum(IEnumerable<TimeSpan> times) =>
+        times.Aggregate(TimeSpan.Zero, (sum, each) => sum + each);
 
     private static double Ms(TimeSpan time) => Math.Round(time.TotalMilliseconds, 1);
 }

@@ -98,7 +98,7 @@ public sealed class FixtureFileMistakeTests
             "timeout_ms: 100", "timeout_ms: 5",
             9, 74, "relay_units[0].longest_answer_ms", "not below the time-out of link `line`, 5 ms"
         },
-        { "watchdog_ms: 1000", "watchdog_ms: 20", 9, 96, "relay_units[0].watchdog_ms", "between two polls" },
+        { "watchdog_ms: 1000", "watchdog_ms: 10", 9, 96, "relay_units[0].watchdog_ms", "between two polls" },
         { "voltage_v: 12", "voltage_v: -61", 11, 43, "board_supply.voltage_v", "above 60 V DC" },
         {
             "off_below_v: 0.5", "off_below_v: 12",
@@ -111,8 +111,8 @@ public sealed class FixtureFileMistakeTests
             "coil: 0, contact_input: 0", "coil: 0",
             66, 5, "outputs[0].load_current_proof", "no contact_input is wired on: L1k"
         },
-        { "poll_ms: 20", "poll_ms: 60", 97, 3, "inputs.poll_ms", "as late as" },
-        { "baud: 115200", "baud: 2400", 97, 3, "inputs.poll_ms", "poll period 20 + exchange under way" },
+        { "poll_ms: 10", "poll_ms: 60", 97, 3, "inputs.poll_ms", "as late as" },
+        { "baud: 115200", "baud: 2400", 97, 3, "inputs.poll_ms", "poll period 10 + exchange under way" },
         { "interlock: {unit: b, input: 1}\n", "\n", 95, 3, "inputs.interlock", "the key is missing" },
     };
 

@@ -14,17 +14,19 @@ public sealed class InterlockReactionTests
         InterlockReaction reaction = InterlockReaction.WorstCase(FixtureFileBinder.Bind(SmallFiles.Fixture()).Value);
         const double character = 11.0 / 115.2;
         const double silence = 2 * 1.75;
-        double writeA = 5 + silence + (19 * character);
+        double writeA = 5 + silence + (18 * character);
         double readBackA = 5 + silence + (15 * character);
-        double writeB = 4 + silence + (19 * character);
+        double writeB = 4 + silence + (18 * character);
         double readBackB = 4 + silence + (15 * character);
         double readInputsB = 4 + silence + (14 * character);
-        Assert.Equal(20.0, reaction.Poll.TotalMilliseconds, 3);
+        Assert.Equal(10.0, reaction.Poll.TotalMilliseconds, 3);
         Assert.Equal(writeA, reaction.Waiting.TotalMilliseconds, 3);
         Assert.Equal(readInputsB, reaction.Reading.TotalMilliseconds, 3);
-        double allOpen = writeA + readBackA + writeB + readBackB;
-        Assert.Equal(allOpen, reaction.AllOpen.TotalMilliseconds, 3);
-        Assert.Equal(20.0 + writeA + readInputsB + allOpen, reaction.Total.TotalMilliseconds, 3);
+
+        // Each unit has two runs of coils without a gap; a read-back bridges the gap between them.
+        double allOpen = (2 * writeA) + readBackA + (2 * writeB) + readBackB;
+        Assert.Equal(allOpen, reaction.AllOpen.TotalMilliseconds, 1e-3);
+        Assert.Equal(10.0 + writeA + readInputsB + allOpen, reaction.Total.TotalMilliseconds, 1e-3);
     }
 
     [Fact]
@@ -32,9 +34,11 @@ public sealed class InterlockReactionTests
     {
         FixtureFile fixture = FixtureFileBinder.Bind(ShippedFiles.Read(ShippedFiles.SimulatedBench)).Value;
         InterlockReaction reaction = InterlockReaction.WorstCase(fixture);
-        Assert.Equal(20.0 + 8.0 + 8.0 + (3 * 2 * 8.0), reaction.Total.TotalMilliseconds, 9);
+
+        // Outputs: three runs of coils without a gap; the other two units: one each. One read-back for each unit.
+        Assert.Equal(20.0 + 8.0 + 8.0 + ((3 + 1 + 1 + 3) * 8.0), reaction.Total.TotalMilliseconds, 9);
         Assert.Equal(
-            "84 ms (poll period 20 + exchange under way 8 + reading inputs 8 + opening all 48)", reaction.ToString());
+            "100 ms (poll period 20 + exchange under way 8 + reading inputs 8 + opening all 64)", reaction.ToString());
     }
 
     [Fact]
@@ -45,7 +49,7 @@ public sealed class InterlockReactionTests
         FixtureFile slow = fixture with { Links = [fast with { BaudRate = 9600 }, fixture.Links[1]] };
         const double character = 11.0 / 9.6;
         TimeSpan waiting = InterlockReaction.WorstCase(slow).Waiting;
-        Assert.Equal(5 + (7 * character) + (19 * character), waiting.TotalMilliseconds, 3);
+        Assert.Equal(5 + (7 * character) + (18 * character), waiting.TotalMilliseconds, 3);
     }
 
     [Theory]

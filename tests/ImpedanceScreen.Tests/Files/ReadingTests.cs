@@ -158,7 +158,7 @@ public sealed class ReadingTests
             "\n",
             JobBinder.Bind(limits, fixture).Mistakes
                 .Concat(JobBinder.Bind(weak, fixture).Mistakes)
-                .Concat(FixtureFileBinder.Bind(SmallFiles.Fixture("poll_ms: 20", "poll_ms: 60.5")).Mistakes)
+                .Concat(FixtureFileBinder.Bind(SmallFiles.Fixture("poll_ms: 10", "poll_ms: 60.5")).Mistakes)
                 .Concat(FixtureFileBinder.Bind(SmallFiles.Fixture("off_below_v: 0.5", "off_below_v: -0.5")).Mistakes)
                 .Concat(FixtureFileBinder.Bind(SmallFiles.Fixture("timeout_ms: 250", "timeout_ms: 19.5")).Mistakes));
         QuantityLimit limit = limits.Outputs[0].States[0].Limits[0];

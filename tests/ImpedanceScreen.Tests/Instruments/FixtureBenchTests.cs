@@ -16,8 +16,9 @@ public sealed class FixtureBenchTests : IAsyncLifetime
     private readonly MeterPeer meter = new();
     private readonly MemoryChannels channels = new();
     private readonly List<(TimeSpan At, byte Unit, WriteCoils Write)> writes = [];
-    private FixtureBench bench;
     private readonly long startedAt;
+    private FixtureBench bench;
+    private int exchanges;
 
     public FixtureBenchTests()
     {
@@ -29,6 +30,7 @@ public sealed class FixtureBenchTests : IAsyncLifetime
         {
             bank.Seen = request =>
             {
+                exchanges++;
                 if (request is WriteCoils write)
                 {
                     writes.Add((time.GetElapsedTime(startedAt), unit, write));
@@ -172,13 +174,13 @@ public sealed class FixtureBenchTests : IAsyncLifetime
     {
         await StartAsync();
         await SwitchAsync([], [TestBench.Selector1, TestBench.Load1]);
-        ContactCheck good = await time.PumpAsync(bench.CheckContactsAsync(CancellationToken.None));
+        ContactCheck good = await time.PumpAsync(bench.CheckContactsAsync(NothingBetween, CancellationToken.None));
         Assert.Equal([TestBench.Load1], good.Proved);
         Assert.Empty(good.NotClosed.Concat(good.NotOpen));
 
         First.Inputs[20] = false;
         First.Inputs[21] = true;
-        ContactCheck bad = await time.PumpAsync(bench.CheckContactsAsync(CancellationToken.None));
+        ContactCheck bad = await time.PumpAsync(bench.CheckContactsAsync(NothingBetween, CancellationToken.None));
         Assert.Equal([TestBench.Load1], bad.NotClosed);
         Assert.Equal([TestBench.Load2], bad.NotOpen);
     }
@@ -293,6 +295,40 @@ public sealed class FixtureBenchTests : IAsyncLifetime
     }
 
     [Fact]
+    public async Task Between_any_two_exchanges_of_a_switching_the_inputs_can_be_read()
+    {
+        await StartAsync();
+        int between = 0;
+        Task Between(CancellationToken cancellation)
+        {
+            between++;
+            return bench.PollInputsAsync(cancellation);
+        }
+
+        int before = exchanges;
+        await time.PumpAsync(bench.SwitchAsync(
+            new SwitchOrder([], [TestBench.Selector1, TestBench.Sense1, TestBench.Common]), Between, CancellationToken.None));
+        await time.PumpAsync(bench.CheckContactsAsync(Between, CancellationToken.None));
+
+        // One call before each exchange, whose own poll is one exchange more.
+        Assert.InRange(between, 5, 20);
+        Assert.Equal(2 * between, exchanges - before);
+    }
+
+    [Fact]
+    public async Task A_poll_that_ends_the_attempt_leaves_the_relays_doubtful()
+    {
+        await StartAsync();
+        await Assert.ThrowsAsync<InvalidOperationException>(() => time.PumpAsync(bench.SwitchAsync(
+            new SwitchOrder([], [TestBench.Selector1, TestBench.Common]),
+            _ => throw new InvalidOperationException("interlock"),
+            CancellationToken.None)));
+        await Assert.ThrowsAsync<BenchFaultException>(() => SwitchAsync([], [TestBench.Sense1]));
+        Assert.True((await OpenAllAsync()).Confirmed);
+        await SwitchAsync([], [TestBench.Sense1]);
+    }
+
+    [Fact]
     public async Task Without_a_coil_for_it_the_retest_bin_is_no_bin_coil_at_all()
     {
         Handshake two = TestBench.Fixture.Handshake! with { RetestBin = null };
@@ -355,6 +391,8 @@ public sealed class FixtureBenchTests : IAsyncLifetime
         Assert.Throws<ArgumentException>(() => Bench(shared));
     }
 
+    private static Task NothingBetween(CancellationToken cancellation) => Task.CompletedTask;
+
     private FixtureBench Bench(FixtureFile fixture) => new(fixture, channels, time, 1, NullLogger.Instance);
 
     private Task<BenchStart> StartAsync() => time.PumpAsync(bench.StartAsync(CancellationToken.None));
@@ -367,5 +405,5 @@ public sealed class FixtureBenchTests : IAsyncLifetime
         (await time.PumpAsync(bench.ReadAsync(TestBench.Meter, 1, CancellationToken.None)))[0];
 
     private Task<Switched> SwitchAsync(Relay[] open, Relay[] close) =>
-        time.PumpAsync(bench.SwitchAsync(new SwitchOrder(open, close), CancellationToken.None));
+        time.PumpAsync(bench.SwitchAsync(new SwitchOrder(open, close), NothingBetween, CancellationToken.None));
 }

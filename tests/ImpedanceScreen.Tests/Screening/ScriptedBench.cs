@@ -60,7 +60,8 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
         return Task.FromResult(Inputs(new InputState(present, InterlockClosed: true)));
     }
 
-    public Task<Switched> SwitchAsync(SwitchOrder order, CancellationToken cancellation)
+    public Task<Switched> SwitchAsync(
+        SwitchOrder order, Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         cancellation.ThrowIfCancellationRequested();
         Note($"switch open {Names(order.Open)} close {Names(order.Close)}");
@@ -69,7 +70,8 @@ internal sealed class ScriptedBench(ScreeningJob job, TimeProvider time) : IBenc
         return Task.FromResult(new Switched(time.GetTimestamp(), TimeSpan.FromMilliseconds(2)));
     }
 
-    public Task<ContactCheck> CheckContactsAsync(CancellationToken cancellation)
+    public Task<ContactCheck> CheckContactsAsync(
+        Func<CancellationToken, Task> between, CancellationToken cancellation)
     {
         Note("contacts");
         return Task.FromResult(new ContactCheck([.. closed.Where(relay => relay.ContactInput is not null)], [], []));

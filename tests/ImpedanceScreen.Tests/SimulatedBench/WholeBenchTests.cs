@@ -30,7 +30,7 @@ public sealed class WholeBenchTests
         }
 
         Assert.InRange((await bench.ReadTemperatureAsync(default))!.Value, 18.0, 29.0);
-        await bench.SwitchAsync(new SwitchOrder([], [Tern6.Fixture.BoardSupply!.Relay]), default);
+        await bench.SwitchAsync(new SwitchOrder([], [Tern6.Fixture.BoardSupply!.Relay]), NothingBetween, default);
         SimulatedBoard board = new BoardFactory(Tern6.Population, Seed, "T6-000001").Make(1);
         foreach (string output in new[] { "TIDE", "SUPPLY" })
         {
@@ -53,15 +53,17 @@ public sealed class WholeBenchTests
     private static async Task<(double Unloaded, double Loaded)> MeasureAsync(FixtureBench bench, StateJob state)
     {
         List<Relay> path = [state.Output.Selector, state.Output.Sense, Tern6.Fixture.CommonReturn!];
-        await bench.SwitchAsync(new SwitchOrder([], path), default);
+        await bench.SwitchAsync(new SwitchOrder([], path), NothingBetween, default);
         double unloaded = await ReadAsync(bench, state);
         Relay load = state.Loads[^1].Relay;
-        await bench.SwitchAsync(new SwitchOrder([], [load]), default);
+        await bench.SwitchAsync(new SwitchOrder([], [load]), NothingBetween, default);
         double loaded = await ReadAsync(bench, state);
-        Assert.Contains(load, (await bench.CheckContactsAsync(default)).Proved);
-        await bench.SwitchAsync(new SwitchOrder([load, .. path], []), default);
+        Assert.Contains(load, (await bench.CheckContactsAsync(NothingBetween, default)).Proved);
+        await bench.SwitchAsync(new SwitchOrder([load, .. path], []), NothingBetween, default);
         return (unloaded, loaded);
     }
+
+    private static Task NothingBetween(CancellationToken cancellation) => Task.CompletedTask;
 
     private static async Task<double> ReadAsync(FixtureBench bench, StateJob state)
     {
