@@ -128,7 +128,16 @@ internal sealed class KillCampaign : IAsyncDisposable
         ];
     }
 
-    // Half the time the next start comes before the relay units' own watchdogs have opened anything.
-    private Task PauseAsync(CancellationToken cancellation) =>
-        random.Next(2) == 0 ? Task.CompletedTask : Task.Delay(judge.WatchdogTime, cancellation);
+    // Half the time the next start comes before the relay units' own watchdogs have opened anything; otherwise after
+    // all of them have, those that hold the handshake included.
+    private async Task PauseAsync(CancellationToken cancellation)
+    {
+        if (random.Next(2) == 0)
+        {
+            return;
+        }
+
+        await judge.AwaitWatchdogsAsync(cancellation);
+        await Task.Delay(bench.Job.Fixture.RelayUnits.Max(unit => unit.WatchdogSilence!.Value), cancellation);
+    }
 }
