@@ -1,4 +1,5 @@
 using ImpedanceScreen.Fixtures;
+using ImpedanceScreen.Jobs;
 using ImpedanceScreen.Planning;
 using ImpedanceScreen.Statistics;
 
@@ -31,7 +32,10 @@ internal static class LoadCurrentTest
         string[] silent = [.. set.Loaded.Where(read => !IsProved(set, read)).Select(Name)];
         if (silent.Length == 0)
         {
-            return null;
+            return IsSilentBehindContacts(set)
+                ? Fault("no load changes the reading though their contacts read closed: path to the loads, their return "
+                    + "or the sense path is open; look at selector relay, load probe and sense contact")
+                : null;
         }
 
         return silent.Length == set.Loaded.Length && silent.Length > 1
@@ -57,6 +61,20 @@ internal static class LoadCurrentTest
 
         string names = List([.. set.Loaded.Except(changed).Select(Name)]);
         return Fault($"load {names} changes nothing though the other loads do: load, branch or joint open");
+    }
+
+    // A mirror contact proves that a relay moved, not that current flowed. Where a good output would show its heaviest
+    // load beyond doubt, one that shows none at all is an open path and not a perfect source.
+    private static bool IsSilentBehindContacts(ReadingSet set)
+    {
+        if (set.Loaded.MinBy(read => read.Point.Load!.ResistanceOhm) is not { } heaviest)
+        {
+            return false;
+        }
+
+        double due = LoadProof.NominalChangeVolt(set.Job, heaviest.Point.Load!);
+        double known = LoadProof.ChangeUncertaintyVolt(set.Job.Range, heaviest.Readings.Count);
+        return due >= LoadProof.ProvingFactor * known && !set.Loaded.Any(read => Changes(set, read));
     }
 
     private static bool IsProved(ReadingSet set, LoadPointReadings read) =>

@@ -8,6 +8,9 @@ namespace ImpedanceScreen.Estimation;
 /// <summary>Readings of one output in one drive state, sorted by what they are.</summary>
 internal sealed class ReadingSet
 {
+    // A mean of readings lies this many of one reading's standard deviations off at most.
+    private const double RailNoiseCoverage = 5.0;
+
     public ReadingSet(StateJob job, IReadOnlyList<LoadPointReadings> readings)
     {
         Job = job;
@@ -44,6 +47,26 @@ internal sealed class ReadingSet
 
     /// <summary>Mean of the rail; null where it was not read.</summary>
     public PointMean? RailMean => Rail.Length == 0 ? null : Mean(Rail[^1]);
+
+    /// <summary>
+    /// Whether the rail that the loads return to reads what the fixture file states, within its own and the meter's
+    /// uncertainty; true where no rail was read.
+    /// </summary>
+    public bool IsRailAsStated
+    {
+        get
+        {
+            if (RailMean is not { } rail)
+            {
+                return true;
+            }
+
+            Window stated = SafeLoading.ReturnVolt(Job.LoadReturn);
+            double meter = Job.Range.OffsetLimitVolt + (Job.Range.GainLimit * Math.Abs(rail.Volt))
+                + (RailNoiseCoverage * Job.Range.NoiseVolt);
+            return rail.Volt >= stated.Min - meter && rail.Volt <= stated.Max + meter;
+        }
+    }
 
     public static PointMean Mean(LoadPointReadings read) =>
         new(read.Point.Load, read.Readings.Average(reading => reading.Volt), read.Readings.Count);

@@ -1,5 +1,6 @@
 using System.Globalization;
 using ImpedanceScreen.Bench;
+using ImpedanceScreen.Fixtures;
 using ImpedanceScreen.Planning;
 using ImpedanceScreen.Quantities;
 using ImpedanceScreen.Statistics;
@@ -20,6 +21,7 @@ internal static class SourceDiagnosis
     /// <param name="rate">False-alarm rate of each test.</param>
     public static SourceFault? BeforeFit(ReadingSet set, double rate) =>
         ConditionFault(set)
+        ?? RailFault(set)
         ?? UnloadedFault(set)
         ?? ScatterFault(set, rate)
         ?? (set.Unloaded.Length == 0 ? null : LimitingFault(set, rate))
@@ -94,6 +96,22 @@ internal static class SourceDiagnosis
         }
 
         return null;
+    }
+
+    private static SourceFault? RailFault(ReadingSet set)
+    {
+        if (set.IsRailAsStated)
+        {
+            return null;
+        }
+
+        LoadReturn rail = set.Job.LoadReturn!;
+        return new(
+            SourceFaultKind.LoadNotProved,
+            $"load return '{rail.Name}' reads {UncertainText.Voltage(set.RailMean!.Value.Volt)} where "
+                + $"{UncertainText.Voltage(rail.VoltageVolt.Value)} is stated: loads would draw another current, or none; "
+                + "look at the rail's supply and relay",
+            OfFixture: true);
     }
 
     private static SourceFault? UnloadedFault(ReadingSet set)

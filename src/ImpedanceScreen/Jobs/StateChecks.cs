@@ -66,22 +66,27 @@ internal static class StateChecks
         }
     }
 
-    /// <summary>Without a contact to read, only a change of the voltage proves that load current flowed.</summary>
+    /// <summary>
+    /// Only a change of the voltage proves that load current flowed; a contact alone suffices where no limit would be
+    /// satisfied without any.
+    /// </summary>
     internal static void CheckProof(StateJob job, JobMistakes mistakes)
     {
         Load heaviest = job.Loads[^1];
         double change = LoadProof.NominalChangeVolt(job, heaviest);
         double uncertainty = LoadProof.ChangeUncertaintyVolt(job.Range, job.State.ReadingsPerLoadPoint);
-        if (job.Output.LoadCurrentProof == LoadCurrentProof.ContactReadback
-            || change >= LoadProof.ProvingFactor * uncertainty)
+        QuantityLimit? satisfied = job.State.Limits.FirstOrDefault(LoadProof.IsSatisfiedByZeroChange);
+        bool contact = job.Output.LoadCurrentProof == LoadCurrentProof.ContactReadback;
+        if (change >= LoadProof.ProvingFactor * uncertainty || (contact && satisfied is null) || !CurrentFlows(job))
         {
             return;
         }
 
         string seen = Invariant(
             $"the heaviest load changes a good output by {change * 1e6:G3} uV, known to {uncertainty * 1e6:G3} uV");
-        const string cure = "wire contact readback on the loads, take a heavier load or more readings";
-        QuantityLimit? satisfied = job.State.Limits.FirstOrDefault(LoadProof.IsSatisfiedByZeroChange);
+        string cure = contact
+            ? "take a heavier load or more readings: a contact shows that its relay moved, not that current flowed"
+            : "wire contact readback on the loads, take a heavier load or more readings";
         if (satisfied is null)
         {
             mistakes.AtState("loads", $"{seen}: no load point would count", cure);
@@ -97,7 +102,7 @@ internal static class StateChecks
     /// <summary>A load that returns to the output's own voltage draws no current.</summary>
     internal static void CheckCurrentFlows(StateJob job, JobMistakes mistakes)
     {
-        if (SafeLoading.ReturnVolt(job.LoadReturn).Contains(job.State.Nominal.SourceVoltageVolt))
+        if (!CurrentFlows(job))
         {
             mistakes.AtState(
                 job.State.LoadReturn is null ? "nominal.source_voltage_v" : "load_return",
@@ -128,6 +133,9 @@ internal static class StateChecks
             }
         }
     }
+
+    private static bool CurrentFlows(StateJob job) =>
+        !SafeLoading.ReturnVolt(job.LoadReturn).Contains(job.State.Nominal.SourceVoltageVolt);
 
     private static int IndexOf(IReadOnlyList<string> names, string name) =>
         Enumerable.Range(0, names.Count).First(i => names[i] == name);

@@ -31,6 +31,14 @@ internal static class StateJobBinder
             return null;
         }
 
+        if (loadReturn is not null && loadReturn.Meter != way.Meter)
+        {
+            mistakes.AtState(
+                "load_return", $"the rail is read by meter `{loadReturn.Meter}`, the output by `{way.Meter}`",
+                "wire both to one meter: its errors then cancel");
+            return null;
+        }
+
         if (Range(meter, state, loadReturn, mistakes) is not { } range)
         {
             return null;

@@ -34,6 +34,11 @@ public static class FixedPlan
             return Measure(job, new LoadPoint(null, Sensed.LoadReturn));
         }
 
+        if (!set.IsRailAsStated)
+        {
+            return new PlanStep.Stop(StopReason.ReturnNotAsStated);
+        }
+
         if (set.Unloaded.Length == 0)
         {
             return Measure(job, new LoadPoint(null));

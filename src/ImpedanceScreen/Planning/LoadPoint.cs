@@ -46,6 +46,9 @@ public enum StopReason
     /// <summary>The unloaded reading lies outside its window: no load may close.</summary>
     UnloadedOutsideWindow,
 
+    /// <summary>The rail that the loads return to is not at its stated voltage: no load may close.</summary>
+    ReturnNotAsStated,
+
     /// <summary>The output began to limit: no heavier load is tried.</summary>
     Limiting,
 

@@ -98,6 +98,28 @@ public sealed class DiagnosisTests
     }
 
     [Fact]
+    public void No_change_at_all_behind_closed_contacts_is_no_perfect_source()
+    {
+        StateJob job = SourceBench.Job(contact: true);
+        Draw draw = Draw.From(job, new Random(2));
+        Array.Fill(draw.PathOhm, double.PositiveInfinity);
+        StateResult result = Evaluate(job, bench.Read(job, ampere => 5 - (100 * ampere), draw));
+        AssertFault(result, SourceFaultKind.LoadNotProved, Decision.Undecided, "though their contacts read closed");
+    }
+
+    [Theory]
+    [InlineData(0.0)]
+    [InlineData(5.5)]
+    public void A_rail_that_is_not_as_stated_closes_no_load_and_points_at_the_rail(double railVolt)
+    {
+        StateJob job = SourceBench.Job(vth: 0.1, rth: 50, rail: 5, contact: true);
+        Draw draw = Draw.From(job, new Random(2)) with { ReturnVolt = railVolt };
+        IReadOnlyList<LoadPointReadings> readings = bench.Read(job, ampere => 0.1 - (50 * ampere), draw);
+        Assert.Equal(Sensed.LoadReturn, Assert.Single(readings).Point.Sensed);
+        AssertFault(Evaluate(job, readings), SourceFaultKind.LoadNotProved, Decision.Undecided, "is stated");
+    }
+
+    [Fact]
     public void A_contact_that_reads_open_points_at_the_relay()
     {
         StateJob job = SourceBench.Job(contact: true);

@@ -133,12 +133,14 @@ public sealed class JobMistakeTests
     }
 
     [Fact]
-    public void A_limit_that_a_zero_change_satisfies_is_refused_without_proof_of_load_current()
+    public void A_limit_that_a_zero_change_satisfies_is_refused_where_no_change_can_prove_load_current()
     {
         FileText limits = SmallFiles.Limits("internal_resistance_ohm: 100}", "internal_resistance_ohm: 0}");
         FileText proved = SmallFiles.Fixture("two-wire", "terminal");
         FileText unproved = new(proved.Name, SmallFiles.Edit(proved.Text, "contact-readback", "change-from-unloaded"));
-        Assert.Empty(Bind(limits, proved).Mistakes);
+        SmallFiles.AssertOne(
+            Bind(limits, proved).Mistakes, limits, 17, 11, Idle + ".limits.internal_resistance_ohm",
+            "a contact shows that its relay moved, not that current flowed");
         SmallFiles.AssertOne(
             Bind(limits, unproved).Mistakes, limits, 17, 11, Idle + ".limits.internal_resistance_ohm",
             "a load that never came on would satisfy it");
