@@ -24,7 +24,7 @@ internal static class BoardDisposition
         return board switch
         {
             Decision.Pass when order.FailedBefore =>
-                (Disposition.Fail, "an earlier attempt failed: only a named person with a cause makes it a pass"),
+                (Disposition.Fail, "an earlier attempt failed: being tried again does not make it a pass"),
             Decision.Pass => (Disposition.Pass, ""),
             Decision.Fail => (Disposition.Fail, causes),
             _ when order.FailedBefore => (Disposition.Fail, Join("an earlier attempt failed", causes)),

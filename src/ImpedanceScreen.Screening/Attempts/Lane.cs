@@ -41,9 +41,6 @@ internal sealed class Lane(IEnumerable<StateJob> states, int testsPerBoard)
         return State is not null;
     }
 
-    /// <summary>Whether a further state waits.</summary>
-    public bool HasFurtherState => waiting.Count > 0;
-
     /// <summary>Adds readings and asks the planner for the next step.</summary>
     public void Add(LoadPointReadings readings)
     {

@@ -19,7 +19,7 @@ public sealed class StatusBoard
     /// <summary>The status now.</summary>
     public BenchStatus Current => Volatile.Read(ref current);
 
-    /// <summary>Raised on the bench loop's thread after an attempt has its record. Handlers only post it on.</summary>
+    /// <summary>Raised on the bench loop's thread after an attempt has its record: what a handler takes, the loop waits.</summary>
     public event Action<BoardRecord>? Recorded;
 
     /// <summary>Publishes what is being done.</summary>

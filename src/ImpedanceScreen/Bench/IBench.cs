@@ -11,7 +11,7 @@ public interface IBench : IAsyncDisposable
 {
     /// <summary>
     /// Opens the links, reads the handshake coils back without touching them, opens every load, selector, sense and
-    /// stimulus relay, then identifies and sets up the meters. Nothing is sent before the relays are open.
+    /// stimulus relay, then identifies and sets up the meters. Nothing is written before the relays are open.
     /// </summary>
     Task<BenchStart> StartAsync(CancellationToken cancellation);
 

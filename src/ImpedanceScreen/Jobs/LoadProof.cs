@@ -9,7 +9,10 @@ namespace ImpedanceScreen.Jobs;
 /// </summary>
 public static class LoadProof
 {
-    /// <summary>A change proves load current when it exceeds this many of its standard uncertainties.</summary>
+    /// <summary>
+    /// A plan can prove load current where a nominal board's change exceeds this many of its standard uncertainties.
+    /// Each reading is then judged by its own interval.
+    /// </summary>
     public const double ProvingFactor = 5.0;
 
     /// <summary>

@@ -25,7 +25,7 @@ public sealed record StoreRecord(string Station, DateTimeOffset CreatedAt, strin
 /// <param name="Operator">Who worked it; null where not stated.</param>
 /// <param name="StartedAt">UTC.</param>
 /// <param name="ClosedAt">UTC.</param>
-/// <param name="Boards">Boards with a final disposition.</param>
+/// <param name="Boards">Boards with a record in the lot, aborted attempts alone included.</param>
 /// <param name="Passed">Of these, passed.</param>
 /// <param name="Failed">Failed.</param>
 /// <param name="Retest">To retest.</param>
